@@ -87,7 +87,10 @@ export const controlResultSchema = z.strictObject({
 export const verdictSchema = z.strictObject({
   kind: z.enum(['carries', 'doesNot', 'cannotTell', 'explained', 'worse']),
   sentence: z.string(),
+  /** Parts of the sentence that are the answer, drawn in bold. */
+  strong: z.array(z.string()),
 });
+export type Verdict = z.infer<typeof verdictSchema>;
 export const resultSchema = z.strictObject({
   heldOut: heldOutSchema,
   perFold: z.array(foldResultSchema),
