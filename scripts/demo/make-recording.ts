@@ -71,7 +71,8 @@ export function makeRecording(plan: RecordingPlan): MadeRecording {
         let rateHz = unit.baseHz;
         if (sceneTimeMs >= 0 && sceneTimeMs < sceneMs) {
           const drive = stimulus.drive(source, Math.floor(sceneTimeMs / binMs), unit);
-          const onset = 1 - Math.exp(-(sceneTimeMs + 10) / 60) + 0.8 * Math.exp(-(((sceneTimeMs - 80) / 30) ** 2));
+          const onset =
+            1 - Math.exp(-(sceneTimeMs + 10) / 60) + 0.8 * Math.exp(-(((sceneTimeMs - 80) / 30) ** 2));
           rateHz += unit.peakHz * drive * onset;
         } else if (sceneTimeMs >= sceneMs) {
           rateHz += 0.35 * unit.baseHz * Math.exp(-(sceneTimeMs - sceneMs) / 120);
@@ -93,7 +94,10 @@ export function makeRecording(plan: RecordingPlan): MadeRecording {
     contrast: stimulus.contrast,
     pupilMm,
     block: Int32Array.from({ length: nTrials }, (_, trial) => 1 + Math.floor(trial / trialsPerBlock)),
-    trialStartS: Float64Array.from({ length: nTrials }, (_, trial) => 12 + trial * 10.5 + Math.floor(trial / trialsPerBlock) * 60),
+    trialStartS: Float64Array.from(
+      { length: nTrials },
+      (_, trial) => 12 + trial * 10.5 + Math.floor(trial / trialsPerBlock) * 60,
+    ),
     unitArea: units.map((unit) => unit.area),
     unitDepthUm: Float64Array.from(units, (unit) => unit.depthUm),
     isolation: Float64Array.from(units, (unit) => unit.isolation),

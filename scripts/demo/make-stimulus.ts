@@ -30,14 +30,19 @@ const tauMs = 100;
  * own, both Ornstein–Uhlenbeck; the nominal fraction is the common share of the variance. The realised fraction is the common
  * share of the energy that the trial really had. Levels are balanced within blocks, as a careful design would have them.
  */
-export function makeStimulus(draws: Draws, plan: RecordingPlan, frames: { nFrames: number; frameMs: number }): MadeStimulus {
+export function makeStimulus(
+  draws: Draws,
+  plan: RecordingPlan,
+  frames: { nFrames: number; frameMs: number },
+): MadeStimulus {
   const { nTrials } = plan;
   const { nFrames, frameMs } = frames;
   const keep = Math.exp(-frameMs / tauMs);
   const renew = Math.sqrt(1 - keep * keep);
   const path = (out: Float32Array, offset: number): void => {
     out[offset] = draws.normal();
-    for (let frame = 1; frame < nFrames; frame++) out[offset + frame] = keep * out[offset + frame - 1] + renew * draws.normal();
+    for (let frame = 1; frame < nFrames; frame++)
+      out[offset + frame] = keep * out[offset + frame - 1] + renew * draws.normal();
   };
 
   const nominal = new Float64Array(nTrials);
@@ -59,13 +64,16 @@ export function makeStimulus(draws: Draws, plan: RecordingPlan, frames: { nFrame
   for (let trial = 0; trial < nTrials; trial++) {
     const fraction = nominal[trial];
     const scale =
-      plan.design === 'speedTied' ? Math.exp(1 + 0.9 * (fraction - 0.5) + draws.normal(0, 0.12)) : Math.exp(draws.normal(1.2, 0.25));
+      plan.design === 'speedTied'
+        ? Math.exp(1 + 0.9 * (fraction - 0.5) + draws.normal(0, 0.12))
+        : Math.exp(draws.normal(1.2, 0.25));
     const direction = draws.integer(8) * (Math.PI / 4);
     directionDeg[trial] = (direction * 180) / Math.PI;
     contrast[trial] = [0.25, 0.5, 1][draws.integer(3)];
     for (let axis = 0; axis < 2; axis++) {
       path(common, axis * nFrames);
-      for (let location = 0; location < nLocations; location++) path(own, (axis * nLocations + location) * nFrames);
+      for (let location = 0; location < nLocations; location++)
+        path(own, (axis * nLocations + location) * nFrames);
     }
     const toCommon = Math.sqrt(fraction);
     const toOwn = Math.sqrt(1 - fraction);
