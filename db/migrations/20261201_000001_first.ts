@@ -47,6 +47,16 @@ export async function up(knex: Knex): Promise<void> {
       .inTable('memberships')
       .onDelete('CASCADE');
   });
+  await knex.schema.createTable('sign_ins', (t) => {
+    id(t, 'id').primary();
+    id(t, 'user_id').notNullable().references('users.id').onDelete('CASCADE');
+    t.string('agent', 300).notNullable();
+    t.string('address', 60).notNullable();
+    instant(t, 'last_seen_at').notNullable();
+    instant(t, 'ended_at').nullable();
+    created(t);
+    t.index(['user_id', 'id']);
+  });
   await knex.schema.createTable('studies', (t) => {
     id(t, 'id').primary();
     id(t, 'lab_id').notNullable().references('labs.id');
@@ -214,6 +224,12 @@ export async function up(knex: Knex): Promise<void> {
     hash(t, 'hash').notNullable();
     t.index(['lab_id', 'id']);
   });
+  // One row a chain (a lab, or the nil id for what belongs to no lab): it orders the writers and shows a cut-off tail.
+  await knex.schema.createTable('audit_heads', (t) => {
+    id(t, 'chain_id').primary();
+    t.bigInteger('entry_count').notNullable();
+    hash(t, 'hash').nullable();
+  });
   await knex.schema.createTable('outbox', (t) => {
     t.bigIncrements('id');
     t.string('kind', 60).notNullable();
@@ -241,6 +257,7 @@ export async function down(knex: Knex): Promise<void> {
   for (const table of [
     'idempotency_keys',
     'outbox',
+    'audit_heads',
     'audit_entries',
     'readout_parts',
     'readouts',
@@ -252,6 +269,7 @@ export async function down(knex: Knex): Promise<void> {
     'recording_sessions',
     'animals',
     'studies',
+    'sign_ins',
     'api_tokens',
     'memberships',
     'users',

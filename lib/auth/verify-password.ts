@@ -1,0 +1,11 @@
+import argon2 from 'argon2';
+import { hashPassword } from './hash-password';
+
+let decoy: Promise<string> | undefined;
+
+/** Whether the password fits the hash. Without a hash (no such account) the same work is done for nothing. */
+export async function verifyPassword(password: string, hash: string | null): Promise<boolean> {
+  decoy ??= hashPassword(crypto.randomUUID());
+  const fits = await argon2.verify(hash ?? (await decoy), password.normalize('NFKC'));
+  return hash !== null && fits;
+}

@@ -1,0 +1,26 @@
+/** Everything that the policy decides about, `noun.verb`. */
+export const actions = [
+  'study.read',
+  'study.create',
+  'study.change',
+  'animal.read',
+  'animal.create',
+  'animal.change',
+  'session.read',
+  'session.create',
+  'session.change',
+  'file.read',
+  'file.upload',
+  'intake.submit',
+  'exclusion.read',
+  'exclusion.create',
+  'readout.read',
+  'readout.create',
+  'readout.cancel',
+  'token.read',
+  'token.create',
+  'token.revoke',
+  'audit.read',
+  'events.read',
+] as const;
+export type Action = (typeof actions)[number];
