@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { knex, type Knex } from 'knex';
+import knex, { type Knex } from 'knex';
 import { env } from '@/lib/env/env';
 import { MariaClient } from '@/db/maria-client';
 import { connectionOptions } from '@/db/connection-options';
