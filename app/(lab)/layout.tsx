@@ -1,5 +1,5 @@
 import type { ReactNode } from 'react';
-import { HatchDefs } from '@/components/charts/hatch-defs';
+import { Patterns } from '@/components/shell/patterns';
 import { QueryProvider } from '@/components/shell/query-provider';
 import { ViewerProvider } from '@/components/shell/viewer';
 import { requirePageContext } from '@/lib/auth/page-context';
@@ -9,7 +9,7 @@ export default async function LabLayout({ children }: { children: ReactNode }) {
   return (
     <ViewerProvider viewer={{ userName: actor.userName, role: actor.role, labName: actor.labName }}>
       <QueryProvider>
-        <HatchDefs />
+        <Patterns />
         {children}
       </QueryProvider>
     </ViewerProvider>

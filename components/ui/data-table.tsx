@@ -60,10 +60,10 @@ export function DataTable<Row>({
 }) {
   const captionId = useId();
   const definitions = useMemo(() => {
-    const helper = createColumnHelper<typeof features, Row>();
+    const helper = createColumnHelper<typeof features, { row: Row }>();
     return helper.columns(
       columns.map((column) =>
-        helper.accessor((row: Row) => column.value?.(row) ?? undefined, {
+        helper.accessor(({ row }: { row: Row }) => column.value?.(row) ?? undefined, {
           id: column.key,
           enableSorting: column.value !== undefined && column.headDrawing === undefined,
           sortFn: column.numeric ? 'basic' : 'alphanumeric',
@@ -73,13 +73,13 @@ export function DataTable<Row>({
       ),
     );
   }, [columns]);
-  const data = useMemo(() => [...rows], [rows]);
+  const data = useMemo(() => rows.map((row) => ({ row })), [rows]);
   const table = useTable({
     features,
     columns: definitions,
     data,
     enableSortingRemoval: false,
-    getRowId: rowKey,
+    getRowId: ({ row }) => rowKey(row),
     initialState: { sorting: sortBy ? [{ id: sortBy.key, desc: sortBy.descending }] : [] },
   });
   return (
@@ -128,7 +128,7 @@ export function DataTable<Row>({
         </thead>
         <tbody>
           {table.getRowModel().rows.map((row) => (
-            <tr key={row.id} className={rowClass?.(row.original)}>
+            <tr key={row.id} className={rowClass?.(row.original.row)}>
               {columns.map((column) => (
                 <td
                   key={column.key}
@@ -136,7 +136,7 @@ export function DataTable<Row>({
                     [column.numeric ? 'n' : '', column.className ?? ''].filter(Boolean).join(' ') || undefined
                   }
                 >
-                  {column.cell(row.original)}
+                  {column.cell(row.original.row)}
                 </td>
               ))}
             </tr>
