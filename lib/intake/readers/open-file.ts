@@ -1,0 +1,16 @@
+import type { ByteSource } from '@/lib/intake/byte-source';
+import { openCsv } from '@/lib/intake/readers/csv/open-csv';
+import { openNpy } from '@/lib/intake/readers/npy/open-npy';
+import { openNpz } from '@/lib/intake/readers/npz/open-npz';
+import type { ReadableFile } from '@/lib/intake/readers/readable-file';
+import { sniffFormat } from '@/lib/intake/readers/sniff-format';
+
+const openers = { npy: openNpy, npz: openNpz, csv: openCsv } as const;
+
+/**
+ * Recognises and opens a member's file.
+ * @throws IntakeRefusal where the file is of no known format, damaged, or not what it claims to be
+ */
+export async function openFile(source: ByteSource): Promise<ReadableFile> {
+  return openers[await sniffFormat(source)](source);
+}

@@ -1,0 +1,81 @@
+import type { ByteSource } from '@/lib/intake/byte-source';
+import { IntakeRefusal } from '@/lib/intake/intake-refusal';
+
+export type ReadableFormat = 'npy' | 'npz' | 'csv';
+
+/** Formats that are recognised in order to say clearly that they are not read. */
+const foreign: { name: string; matches: (head: Buffer) => boolean; remedy: string }[] = [
+  {
+    name: 'an HDF5 file (also MAT 7.3 and NWB)',
+    matches: (head) => head.subarray(0, 8).equals(Buffer.from('894844460d0a1a0a', 'hex')),
+    remedy: 'Send NPY, NPZ, CSV or TSV.',
+  },
+  {
+    name: 'a MATLAB file',
+    matches: (head) => head.subarray(0, 10).toString('latin1') === 'MATLAB 5.0',
+    remedy: 'Send NPY, NPZ, CSV or TSV.',
+  },
+  {
+    name: 'an Arrow or Parquet file',
+    matches: (head) =>
+      ['ARROW1', 'FEA1'].some((magic) => head.toString('latin1').startsWith(magic)) ||
+      head.subarray(0, 4).toString('latin1') === 'PAR1',
+    remedy: 'Send NPY, NPZ, CSV or TSV.',
+  },
+  {
+    name: 'a gzip archive',
+    matches: (head) => head[0] === 0x1f && head[1] === 0x8b,
+    remedy: 'Unpack it and send the file inside.',
+  },
+  {
+    name: 'a pickle',
+    matches: (head) => head[0] === 0x80 && head[1] >= 2 && head[1] <= 5,
+    remedy: 'Pickles can run code and are never opened. Save the arrays as NPZ.',
+  },
+  {
+    name: 'a PDF document',
+    matches: (head) => head.subarray(0, 5).toString('latin1') === '%PDF-',
+    remedy: 'Send the table as CSV.',
+  },
+  {
+    name: 'an old Excel workbook',
+    matches: (head) => head.subarray(0, 8).equals(Buffer.from('d0cf11e0a1b11ae1', 'hex')),
+    remedy: 'Export the sheet as CSV.',
+  },
+];
+
+/** Recognises a file's format by its content; its name is never looked at. */
+export async function sniffFormat(source: ByteSource): Promise<ReadableFormat> {
+  if (source.sizeBytes === 0)
+    throw new IntakeRefusal('file-empty', 'The file is empty.', 'Check the export and send the file again.');
+  const bytes = await source.read(0, Math.min(4096, source.sizeBytes));
+  const head = Buffer.from(bytes.buffer, bytes.byteOffset, bytes.byteLength);
+  const npy = Buffer.from('934e554d5059', 'hex');
+  if (
+    head.subarray(0, npy.length).equals(npy.subarray(0, Math.min(npy.length, head.length))) &&
+    head[0] === 0x93
+  )
+    return 'npy';
+  if (head[0] === 0x50 && head[1] === 0x4b && (head[2] === 3 || head[2] === 5)) {
+    if (head.includes('[Content_Types].xml'))
+      throw new IntakeRefusal('format-unknown', 'This is an Excel workbook.', 'Export the sheet as CSV.');
+    return 'npz';
+  }
+  const other = foreign.find((format) => format.matches(head));
+  if (other) throw new IntakeRefusal('format-unknown', `This is ${other.name}.`, other.remedy);
+  if (isBinary(head))
+    throw new IntakeRefusal(
+      'format-unknown',
+      'The file is none of the formats that are read.',
+      'Send NPY, NPZ, CSV or TSV.',
+    );
+  return 'csv';
+}
+
+/** More than a few control characters: not text. UTF-16 and stray NULs stay with the text reader, which names the line. */
+function isBinary(head: Buffer): boolean {
+  if ((head[0] === 0xff && head[1] === 0xfe) || (head[0] === 0xfe && head[1] === 0xff)) return false;
+  let controls = 0;
+  for (const byte of head) if (byte < 0x20 && byte !== 0x09 && byte !== 0x0a && byte !== 0x0d) controls += 1;
+  return controls > Math.max(1, head.length * 0.02);
+}
