@@ -33,7 +33,7 @@ export async function listReadoutLines(
   limit: number,
 ): Promise<ReadoutLine[]> {
   const pick = (path: string, name: string) => q.raw(`json_value(r.result, ?) as ${name}`, [path]);
-  const rows = await q('readouts as r')
+  const rows: Record<string, never>[] = await q('readouts as r')
     .join('users as u', 'u.id', 'r.author_id')
     .join('data_versions as d', 'd.id', 'r.data_version_id')
     .where({ 'r.session_id': sessionId, 'r.lab_id': labId })

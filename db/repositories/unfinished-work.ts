@@ -53,9 +53,7 @@ export async function releaseStaleWork(
     .skipLocked();
   const ids = rows.map((row) => row.id);
   if (ids.length > 0)
-    await trx(table)
-      .whereIn('id', ids)
-      .update({ state: waiting, claimed_by: null, heartbeat_at: null });
+    await trx(table).whereIn('id', ids).update({ state: waiting, claimed_by: null, heartbeat_at: null });
   return rows.map((row) => ({ id: row.id, attempt: row.attempts }));
 }
 

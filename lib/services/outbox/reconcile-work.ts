@@ -26,7 +26,10 @@ export async function reconcileWork({ staleMs, waitingMs }: ReconcileLimits): Pr
       return stale;
     });
     if (released.length > 0)
-      log.warn({ kind, ids: released.map(({ id }) => id) }, 'work without a living worker goes back to the queue');
+      log.warn(
+        { kind, ids: released.map(({ id }) => id) },
+        'work without a living worker goes back to the queue',
+      );
     for (const payload of await listWaitingWork(db(), kind, waitingMs, 200)) {
       if (await isJobLive(kind, payload)) continue;
       log.warn({ kind, id: payload.id }, 'work without a job is sent again');
