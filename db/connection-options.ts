@@ -10,7 +10,7 @@ export function connectionOptions(databaseUrl: string): ConnectionOptions {
     password: decodeURIComponent(url.password),
     database: decodeURIComponent(url.pathname.slice(1)),
     ...(url.searchParams.get('ssl') === 'true' ? { ssl: {} } : {}),
-    charset: 'utf8mb4_unicode_ci',
+    charset: 'utf8mb4',
     timezone: 'Z',
     dateStrings: ['DATE'],
     supportBigNumbers: true,

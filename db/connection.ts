@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto';
 import knex, { type Knex } from 'knex';
 import { env } from '@/lib/env/env';
+import { log } from '@/lib/log/log';
 import { MariaClient } from '@/db/maria-client';
 import { connectionOptions } from '@/db/connection-options';
 
@@ -8,6 +9,13 @@ interface Pool {
   key: string;
   knex: Knex;
 }
+// Every failure also reaches the caller; what knex says besides is for whoever looks for the cause.
+const quietLog: Knex.Logger = {
+  debug: (message: unknown) => log.trace({ message }, 'knex'),
+  warn: (message: unknown) => log.debug({ message }, 'knex'),
+  error: (message: unknown) => log.debug({ message }, 'knex'),
+  deprecate: (method: unknown, alternative: unknown) => log.warn({ method, alternative }, 'knex: deprecated'),
+};
 const shared = globalThis as typeof globalThis & { outfoldPool?: Pool };
 
 /**
@@ -27,7 +35,7 @@ export function db(): Knex {
         connection: connectionOptions(url) as Knex.MySql2ConnectionConfig,
         pool: { min: 0, max: 10, idleTimeoutMillis: 30_000 },
         acquireConnectionTimeout: 10_000,
-        asyncStackTraces: false,
+        log: quietLog,
       }),
     };
   }

@@ -1,5 +1,4 @@
-import { Readable } from 'node:stream';
-import type { ReadableStream as WebReadableStream } from 'node:stream/web';
+import type { Readable } from 'node:stream';
 import {
   AbortMultipartUploadCommand,
   CompleteMultipartUploadCommand,
@@ -15,15 +14,14 @@ import {
 import { env } from '@/lib/env/env';
 import { log } from '@/lib/log/log';
 import { openClient } from '@/storage/open-client';
+import { withBody, type Body } from '@/storage/with-body';
 import { RangeOutside } from '@/storage/range-outside';
 import { storeErrorFrom } from '@/storage/store-error-from';
-
-type Body = Uint8Array | Readable | WebReadableStream<Uint8Array> | ReadableStream<Uint8Array>;
 
 /**
  * The bucket, by key (see keys.ts). Everything throws ObjectMissing where an object was expected and is not there, and
  * AppError('unavailable') while the store is away. A body given as a stream is read once and never held whole in memory;
- * `sizeBytes` must be its exact length.
+ * `sizeBytes` must be its exact length: another length, or a stream that breaks off, rejects and leaves nothing behind.
  */
 export interface ObjectStore {
   put(key: string, bytes: Uint8Array, contentType?: string): Promise<void>;
@@ -74,13 +72,11 @@ function openStore(client: S3Client, bucket: string): ObjectStore {
 
     putStream: (key, body, sizeBytes, contentType = 'application/octet-stream') =>
       attempt(key, async () => {
-        await client.send(
-          new PutObjectCommand({
-            ...at(key),
-            Body: toNodeBody(body),
-            ContentLength: sizeBytes,
-            ContentType: contentType,
-          }),
+        await withBody(body, sizeBytes, (Body, abortSignal) =>
+          client.send(
+            new PutObjectCommand({ ...at(key), Body, ContentLength: sizeBytes, ContentType: contentType }),
+            { abortSignal },
+          ),
         );
       }),
 
@@ -141,14 +137,17 @@ function openStore(client: S3Client, bucket: string): ObjectStore {
 
     uploadPart: (key, uploadId, number, body, sizeBytes) =>
       attempt(key, async () => {
-        const { ETag } = await client.send(
-          new UploadPartCommand({
-            ...at(key),
-            UploadId: uploadId,
-            PartNumber: number,
-            Body: toNodeBody(body),
-            ContentLength: sizeBytes,
-          }),
+        const { ETag } = await withBody(body, sizeBytes, (Body, abortSignal) =>
+          client.send(
+            new UploadPartCommand({
+              ...at(key),
+              UploadId: uploadId,
+              PartNumber: number,
+              Body,
+              ContentLength: sizeBytes,
+            }),
+            { abortSignal },
+          ),
         );
         return ETag!;
       }),
@@ -177,9 +176,4 @@ function openStore(client: S3Client, bucket: string): ObjectStore {
       }),
   };
   return store;
-}
-
-function toNodeBody(body: Body): Uint8Array | Readable {
-  if (body instanceof Uint8Array || body instanceof Readable) return body;
-  return Readable.fromWeb(body as WebReadableStream<Uint8Array>);
 }

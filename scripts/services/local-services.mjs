@@ -36,6 +36,8 @@ export async function startLocalServices({
     if (leftovers.length > 0) say(`Stopped what an earlier run had left: ${leftovers.join(', ')}.`);
     const env = {
       OUTFOLD_DATA: dataDir,
+      // The client would warn on every start that it will ask for a newer Node some day.
+      AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: 'true',
       AUTH_SECRET: settings.AUTH_SECRET || secrets.authSecret,
     };
     const options = async () => ({ dataDir, secrets, throwAway, port: await freePort() });
