@@ -61,7 +61,7 @@ export async function up(knex: Knex): Promise<void> {
     id(t, 'id').primary();
     id(t, 'lab_id').notNullable().references('labs.id');
     t.string('name', 200).notNullable();
-    t.text('question').notNullable();
+    t.text('question', 'mediumtext').notNullable();
     t.integer('version').notNullable().defaultTo(1);
     id(t, 'created_by').notNullable().references('users.id');
     created(t);
@@ -171,7 +171,7 @@ export async function up(knex: Knex): Promise<void> {
     t.enum('action', ['leaveOut', 'putBack']).notNullable();
     t.enum('kind', ['trial', 'unit']).notNullable();
     t.json('indices').notNullable();
-    t.text('reason').notNullable();
+    t.text('reason', 'mediumtext').notNullable();
     id(t, 'author_id').notNullable().references('users.id');
     created(t);
     t.primary(['session_id', 'version']);

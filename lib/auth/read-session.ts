@@ -20,7 +20,7 @@ export async function readSession(token: string): Promise<{ actor: Actor; signIn
   if (now / 1000 - claims.signedInAt > sessionMaxSeconds) return null;
   const member = await findSignedInMember(db(), {
     signInId: claims.signInId,
-    userId: claims.sub,
+    userId: claims.userId,
     labId: claims.labId,
     idleSince: new Date(now - sessionIdleMs),
   });
@@ -45,7 +45,7 @@ export async function readSession(token: string): Promise<{ actor: Actor; signIn
 async function readClaims(token: string): Promise<SessionClaims | null> {
   try {
     const payload = await decode({ token, secret: env().AUTH_SECRET, salt: sessionCookieName() });
-    const claims = sessionClaimsSchema.safeParse(payload);
+    const claims = sessionClaimsSchema.safeParse(payload?.claims);
     return claims.success ? claims.data : null;
   } catch {
     return null; // not one of our tokens, or past its time

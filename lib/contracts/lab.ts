@@ -15,6 +15,13 @@ export const studySchema = z.strictObject({
 });
 export type Study = z.infer<typeof studySchema>;
 
+/** Only what is named changes. */
+export const changeStudySchema = z
+  .strictObject({ name: nameSchema, question: textSchema })
+  .partial()
+  .refine((value) => Object.keys(value).length > 0, { message: 'name at least one field to change' });
+export type ChangeStudy = z.infer<typeof changeStudySchema>;
+
 export const sexSchema = z.enum(['female', 'male', 'unknown']);
 export const createAnimalSchema = z.strictObject({
   studyId: idSchema,
@@ -35,6 +42,12 @@ export const animalSchema = z.strictObject({
   version: versionSchema,
 });
 export type Animal = z.infer<typeof animalSchema>;
+/** Only what is named changes; an animal stays in its study. */
+export const changeAnimalSchema = createAnimalSchema
+  .omit({ studyId: true })
+  .partial()
+  .refine((value) => Object.keys(value).length > 0, { message: 'name at least one field to change' });
+export type ChangeAnimal = z.infer<typeof changeAnimalSchema>;
 
 /** What a bearer token may be used for; it never exceeds its maker's present role. */
 export const scopeSchema = z.enum(['read', 'intake', 'readouts', 'manage']);
@@ -61,3 +74,5 @@ export const tokenSchema = z.strictObject({
   lastUsedAt: instantSchema.nullable(),
   revokedAt: instantSchema.nullable(),
 });
+export type Token = z.infer<typeof tokenSchema>;
+export type CreatedToken = z.infer<typeof createdTokenSchema>;

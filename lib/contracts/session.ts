@@ -10,6 +10,13 @@ export const createSessionSchema = z.strictObject({
 });
 export type CreateSession = z.infer<typeof createSessionSchema>;
 
+/** Only what is named changes. */
+export const changeSessionSchema = z
+  .strictObject({ startedAt: instantSchema, name: nameSchema })
+  .partial()
+  .refine((value) => Object.keys(value).length > 0, { message: 'name at least one field to change' });
+export type ChangeSession = z.infer<typeof changeSessionSchema>;
+
 export const sessionStateSchema = z.enum(['empty', 'checking', 'waiting', 'ready', 'refused']);
 export type SessionState = z.infer<typeof sessionStateSchema>;
 
