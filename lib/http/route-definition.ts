@@ -47,6 +47,8 @@ export interface RouteDefinition<
   returns: R;
   /** Status of success; 200 where left out, 204 sends no body. */
   status?: number;
+  /** Status of success where it depends on what is told; it wins over `status`. */
+  statusOf?: (answer: R extends z.ZodType ? z.output<R> : never) => number;
   /** Cap on the body; 1 MiB where left out. A streamed body is only checked by its Content-Length here. */
   maxBytes?: number;
   /** The answer holds a secret that is shown once and must not be kept for replays. */

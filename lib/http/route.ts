@@ -126,7 +126,7 @@ async function answer<
 
 /** The DTO as JSON, checked against what the route promises; a mismatch is our fault and goes to the log. */
 function toResponse(
-  definition: { returns: ReturnsKind; status?: number },
+  definition: { returns: ReturnsKind; status?: number; statusOf?: (answer: never) => number },
   request: Request,
   outcome: unknown,
   requestId: string,
@@ -147,13 +147,14 @@ function toResponse(
   }
   const headers = new Headers({ 'content-type': 'application/json' });
   const { data } = parsed;
+  const finalStatus = definition.statusOf?.(data as never) ?? status;
   if (typeof data === 'object' && data !== null && 'version' in data && typeof data.version === 'number') {
     const tag = versionTag(data.version);
     headers.set('etag', tag);
     if (request.method === 'GET' && request.headers.get('if-none-match') === tag && !('state' in data))
       return new Response(null, { status: 304, headers });
   }
-  return new Response(JSON.stringify(data), { status, headers });
+  return new Response(JSON.stringify(data), { status: finalStatus, headers });
 }
 
 function queryOf(request: Request): Record<string, string | string[]> {
