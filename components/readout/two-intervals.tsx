@@ -1,0 +1,62 @@
+import { IntervalAxis } from '@/components/charts/interval-axis';
+import { IntervalGlyph } from '@/components/charts/interval-glyph';
+import { sharedAxis } from '@/components/charts/shared-axis';
+import { markOfVerdict } from '@/components/readout/mark-of-verdict';
+import { nestedIntervalWords } from '@/components/readout/nested-interval-words';
+import { testTrialIntervalWords } from '@/components/readout/test-trial-interval-words';
+import { numbers } from '@/components/ui/numbers';
+import type { ReadoutResult } from '@/lib/contracts/readout';
+import { formatInterval } from '@/lib/format/format-interval';
+
+/** Both intervals of the held-out R², by name, with what each covers, on one axis. */
+export function TwoIntervals({ result }: { result: ReadoutResult }) {
+  const { heldOut, verdict } = result;
+  const rows = [
+    heldOut.r2Interval && { interval: heldOut.r2Interval, ...nestedIntervalWords(heldOut.r2Interval) },
+    heldOut.testTrialInterval && {
+      interval: heldOut.testTrialInterval,
+      ...testTrialIntervalWords(heldOut.testTrialInterval),
+    },
+  ].filter((row) => row !== null);
+  if (rows.length === 0) return null;
+  const axis = sharedAxis(rows.map((row) => ({ value: heldOut.r2, interval: row.interval })));
+  return (
+    <div className="scroll" tabIndex={0} role="region" aria-label="Two intervals of R²">
+      <table style={{ minWidth: 460 }}>
+        <caption className="vh">Two intervals of the held-out R²</caption>
+        <thead>
+          <tr>
+            <th scope="col">Interval</th>
+            <th scope="col" style={{ width: 194 }}>
+              <IntervalAxis axis={axis} width={180} />
+            </th>
+            <th scope="col" className="num">
+              R²
+            </th>
+          </tr>
+        </thead>
+        <tbody>
+          {rows.map((row) => (
+            <tr key={row.name}>
+              <td style={{ paddingBlock: 6, lineHeight: 1.35 }}>
+                <b>{row.name}</b>
+                <br />
+                <span className="say">{numbers(row.covers)}</span>
+              </td>
+              <td className="iv">
+                <IntervalGlyph
+                  value={heldOut.r2}
+                  interval={row.interval}
+                  mark={markOfVerdict(verdict.kind)}
+                  axis={axis}
+                  width={180}
+                />
+              </td>
+              <td className="n">{formatInterval(row.interval)}</td>
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </div>
+  );
+}
