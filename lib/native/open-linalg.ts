@@ -1,4 +1,4 @@
-import koffi from 'koffi';
+import koffi, { type LibraryHandle } from 'koffi';
 import { checkMatrix } from '@/lib/engine/linalg/check-matrix';
 import type { Linalg, SymmetricEigen, ThinSvd, Transpose } from '@/lib/engine/linalg/port';
 
@@ -10,7 +10,7 @@ const LIBRARIES = ['libopenblas.so.0', 'libopenblas.so'];
 /** A letter as Fortran's CHARACTER(1). */
 const letter = (text: string): Uint8Array => Uint8Array.of(text.charCodeAt(0));
 
-function load(): koffi.IKoffiLib | null {
+function load(): LibraryHandle | null {
   for (const name of LIBRARIES) {
     try {
       return koffi.load(name);
@@ -25,7 +25,7 @@ function need(isRightType: boolean, what: string): void {
   if (!isRightType) throw new TypeError(`${what} is not of the array type that this call takes`);
 }
 
-function open(library: koffi.IKoffiLib): Linalg {
+function open(library: LibraryHandle): Linalg {
   // Two BLAS threads under load are far slower than one; the work is parallel over chunks instead.
   library.func('void openblas_set_num_threads(int)')(1);
   const core = String(library.func('const char *openblas_get_corename()')());

@@ -24,12 +24,12 @@ function absorb(lane: number, word: number): number {
  * `seed` 0…2³²−1; `purpose` a short literal; `indices` integers. Nothing passed in is changed. Cost O(arguments).
  */
 export function splitGenerator(seed: number, purpose: string, ...indices: number[]): RandomGenerator {
-  const lanes = [0x243f6a88, 0x85a308d3, 0x13198a2e, 0x03707344]; // fractional digits of pi: arbitrary, unequal
+  const lanes: number[] = [0x243f6a88, 0x85a308d3, 0x13198a2e, 0x03707344]; // fractional digits of pi: arbitrary, unequal
   const words = [seed | 0, purpose.length];
   for (let i = 0; i < purpose.length; i++) words.push(purpose.charCodeAt(i));
   for (const index of indices) words.push(index | 0, 0x55555555);
-  const state = lanes.map((lane) => words.reduce(absorb, lane));
-  if (state.every((word) => word === 0)) state[0] = 1; // the all-zero state is the generator's one fixed point
+  const state: number[] = lanes.map((lane) => words.reduce<number>(absorb, lane));
+  if (!state.some((word) => word !== 0)) state[0] = 1; // the all-zero state is the generator's one fixed point
   const generator = xoroshiro128plusFromState(state);
   for (let i = 0; i < 4; i++) generator.next();
   return generator;
