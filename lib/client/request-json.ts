@@ -1,5 +1,6 @@
 import type { z } from 'zod';
 import { ApiError } from '@/lib/client/api-error';
+import { randomKey } from '@/lib/client/random-key';
 import { readApiError } from '@/lib/client/read-api-error';
 
 export interface RequestOptions<Output> {
@@ -28,7 +29,7 @@ export async function requestJson<Output = undefined>(
   const headers: Record<string, string> = { accept: 'application/json, application/problem+json' };
   if (options.body !== undefined) headers['content-type'] = 'application/json';
   if (options.octets !== undefined) headers['content-type'] = 'application/octet-stream';
-  if (method === 'POST') headers['idempotency-key'] = options.idempotencyKey ?? crypto.randomUUID();
+  if (method === 'POST') headers['idempotency-key'] = options.idempotencyKey ?? randomKey();
   if (options.ifMatch !== undefined) headers['if-match'] = options.ifMatch;
   let response: Response;
   try {
