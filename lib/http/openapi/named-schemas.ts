@@ -1,0 +1,95 @@
+import type { z } from 'zod';
+import { meSchema } from '@/lib/contracts/account';
+import { arrayFactSchema, createFileSchema, fileSchema } from '@/lib/contracts/file';
+import { healthSchema } from '@/lib/contracts/health';
+import { intakeProposalSchema, intakeSchema } from '@/lib/contracts/intake';
+import {
+  animalSchema,
+  createAnimalSchema,
+  createdTokenSchema,
+  createStudySchema,
+  createTokenSchema,
+  studySchema,
+  tokenSchema,
+} from '@/lib/contracts/lab';
+import { placeSchema, problemSchema } from '@/lib/contracts/problem';
+import {
+  controlResultSchema,
+  foldResultSchema,
+  heldOutSchema,
+  intervalSchema,
+  levelResultSchema,
+  liveEventSchema,
+  nullResultSchema,
+  predictionSchema,
+  progressSchema,
+  provenanceSchema,
+  readoutSchema,
+  readoutSummarySchema,
+  resultSchema,
+} from '@/lib/contracts/readout';
+import {
+  controlSchema,
+  estimatorSchema,
+  foldsSchema,
+  nullSchema,
+  recipeInputSchema,
+  recipeSchema,
+  viewSchema,
+} from '@/lib/contracts/recipe';
+import {
+  columnFactSchema,
+  createExclusionSchema,
+  createSessionSchema,
+  exclusionListSchema,
+  exclusionSchema,
+  labelFactSchema,
+  sessionSchema,
+} from '@/lib/contracts/session';
+
+/** The contracts that get a name in the document; what has none is written out where it is used. */
+export const namedSchemas: Readonly<Record<string, z.ZodType>> = {
+  Animal: animalSchema,
+  ArrayFact: arrayFactSchema,
+  ColumnFact: columnFactSchema,
+  Control: controlSchema,
+  ControlResult: controlResultSchema,
+  CreateAnimal: createAnimalSchema,
+  CreateExclusion: createExclusionSchema,
+  CreateFile: createFileSchema,
+  CreateSession: createSessionSchema,
+  CreateStudy: createStudySchema,
+  CreateToken: createTokenSchema,
+  CreatedToken: createdTokenSchema,
+  Estimator: estimatorSchema,
+  Exclusion: exclusionSchema,
+  ExclusionList: exclusionListSchema,
+  File: fileSchema,
+  FoldResult: foldResultSchema,
+  Folds: foldsSchema,
+  Health: healthSchema,
+  HeldOut: heldOutSchema,
+  Intake: intakeSchema,
+  IntakeProposal: intakeProposalSchema,
+  Interval: intervalSchema,
+  LabelFact: labelFactSchema,
+  LevelResult: levelResultSchema,
+  LiveEvent: liveEventSchema,
+  Me: meSchema,
+  Null: nullSchema,
+  NullResult: nullResultSchema,
+  Place: placeSchema,
+  Prediction: predictionSchema,
+  Problem: problemSchema,
+  Progress: progressSchema,
+  Provenance: provenanceSchema,
+  Readout: readoutSchema,
+  ReadoutSummary: readoutSummarySchema,
+  Recipe: recipeSchema,
+  RecipeInput: recipeInputSchema,
+  Result: resultSchema,
+  Session: sessionSchema,
+  Study: studySchema,
+  Token: tokenSchema,
+  View: viewSchema,
+};
