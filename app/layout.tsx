@@ -7,6 +7,7 @@ import './globals.css';
 export const metadata: Metadata = {
   title: { default: 'Outfold', template: '%s · Outfold' },
   description: 'Leak-free cross-validated population readouts, kept on record per recording session.',
+  icons: { icon: '/icon.svg' },
   robots: { index: false, follow: false },
 };
 export const viewport: Viewport = {

@@ -28,6 +28,8 @@ export class AppError extends Error {
   readonly code: ErrorCode;
   readonly faults: FieldFault[];
   readonly retryAfterSeconds: number | undefined;
+  /** The only word about an error that a page's error boundary is given; otherwise the framework makes a number of it. */
+  digest?: string;
 
   constructor(
     code: ErrorCode,
@@ -39,6 +41,7 @@ export class AppError extends Error {
     this.code = code;
     this.faults = options.faults ?? [];
     this.retryAfterSeconds = options.retryAfterSeconds;
+    if (code === 'unavailable') this.digest = code;
   }
 
   get status(): number {
