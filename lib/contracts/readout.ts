@@ -190,3 +190,14 @@ export const liveEventSchema = z.discriminatedUnion('kind', [
   z.strictObject({ kind: z.literal('file'), sessionId: idSchema, fileId: idSchema, state: z.string() }),
 ]);
 export type LiveEvent = z.infer<typeof liveEventSchema>;
+
+/** What a recipe would take. `recipe` has every default filled in; with problems that stop it there is no estimate. */
+export const readoutEstimateSchema = z.strictObject({
+  recipe: recipeSchema,
+  seconds: num,
+  bytes: num,
+  trials: z.int().nullable(),
+  units: z.int().nullable(),
+  problems: z.array(problemSchema),
+});
+export type ReadoutEstimate = z.infer<typeof readoutEstimateSchema>;

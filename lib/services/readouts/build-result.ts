@@ -1,0 +1,67 @@
+import { resultSchema, type ReadoutResult } from '@/lib/contracts/readout';
+import type { Problem } from '@/lib/contracts/problem';
+import type { Recipe } from '@/lib/contracts/recipe';
+import type { ReadoutNumbers } from '@/lib/engine/readout/types';
+import { buildVerdict } from '@/lib/reports/verdict/build-verdict';
+import type { VerdictNull } from '@/lib/reports/verdict/verdict-facts';
+import { recipeWords } from '@/lib/services/readouts/recipe-words';
+import type { ResolvedRecipe } from '@/lib/services/readouts/resolve-recipe';
+
+/**
+ * The result that is kept and shown, from the engine's numbers. Pure.
+ * @throws ZodError when a number is NaN or infinite or a part is missing: a fault of ours, never stored
+ */
+export function buildResult(
+  recipe: Recipe,
+  numbers: Omit<ReadoutNumbers, 'predictions' | 'trialsUsed'>,
+  facts: {
+    counts: ResolvedRecipe['counts'];
+    notes: Problem[];
+    areas: string[];
+    animal: string;
+    labelTrends: boolean;
+  },
+): ReadoutResult {
+  const { nFeatures, warnings, ...kept } = numbers;
+  const { heldOut } = numbers;
+  const verdict = buildVerdict({
+    animal: facts.animal,
+    areas: facts.areas,
+    label: recipeWords.label(recipe),
+    window: recipe.window,
+    nTrials: facts.counts.trialsUsed,
+    nFeatures,
+    estimatorWords: recipeWords.estimator(recipe),
+    r2: heldOut.r2,
+    interval: heldOut.r2Interval,
+    null: verdictNull(recipe, numbers.null),
+    controls: numbers.controls.map((control, at) => ({
+      kind: control.kind,
+      subject: recipeWords.control(recipe, at),
+      outcome: control.outcome,
+      r2: numberOf(control.heldOut?.r2),
+      interval: null,
+    })),
+    smallestEffect: null,
+    labelTrends: facts.labelTrends,
+  });
+  return resultSchema.parse({
+    ...kept,
+    warnings: [...facts.notes, ...warnings],
+    counts: { ...facts.counts, features: nFeatures },
+    verdict,
+  });
+}
+
+function verdictNull(recipe: Recipe, control: ReadoutNumbers['null']): VerdictNull | null {
+  if (!control) return null;
+  const { p, smallestP, draws, quantiles } = control;
+  const { q025, q95, q975, max } = quantiles;
+  if (p === null || smallestP === null || q025 === null || q95 === null || q975 === null || max === null)
+    return null;
+  return { scheme: recipeWords.shuffle(recipe), draws, p, smallestP, q025, q95, q975, max };
+}
+
+function numberOf(value: unknown): number | null {
+  return typeof value === 'number' ? value : null;
+}

@@ -1,0 +1,84 @@
+import { createHash } from 'node:crypto';
+import { v7 } from 'uuid';
+import { addToOutbox } from '@/db/repositories/outbox';
+import { findReadout, insertReadout, takeReadoutNumber } from '@/db/repositories/readouts';
+import { inTransaction } from '@/db/transaction';
+import { canonicalJson } from '@/lib/audit/canonical-json';
+import { writeAudit } from '@/lib/audit/write-audit';
+import type { CreateReadout, Readout } from '@/lib/contracts/readout';
+import type { Recipe } from '@/lib/contracts/recipe';
+import { publishLive } from '@/lib/jobs/publish-live';
+import { authorize } from '@/lib/services/authorize';
+import type { Ctx } from '@/lib/services/context';
+import { pokeRelay } from '@/lib/services/outbox/poke-relay';
+import { invalidRecipe } from '@/lib/services/readouts/invalid-recipe';
+import { prepareRecipe } from '@/lib/services/readouts/prepare-recipe';
+import { writeInputs } from '@/lib/services/readouts/readout-inputs';
+import { toReadout } from '@/lib/services/readouts/to-readout';
+import { keys } from '@/storage/keys';
+import { objectStore } from '@/storage/object-store';
+
+/** Given permutations above this many entries leave the recipe's row for the object store. */
+const maxInlineEntries = 20_000;
+
+/**
+ * A new readout of a session: fills the recipe, checks it at once, gives it the session's next number and queues it.
+ * @throws AppError invalid-input with every fault and its pointer; conflict where the session has no data
+ */
+export async function createReadout(
+  ctx: Ctx,
+  input: CreateReadout & { sessionId: string },
+): Promise<Readout> {
+  authorize(ctx, 'readout.create');
+  const { labId, userId } = ctx.actor;
+  const { sessionId } = input;
+  const id = v7();
+  const prepared = await prepareRecipe(labId, sessionId, input.recipe, id);
+  if (prepared.faults.length > 0) throw invalidRecipe(prepared.faults);
+  const recipeHash = createHash('sha256').update(canonicalJson(prepared.recipe)).digest('hex');
+  const inputsKey = keys.readoutInputs(labId, sessionId, id);
+  const { recipe, inputs } = partLongInputs(prepared.recipe);
+  // Before the row: a row must never name an object that is not there. One that no row names is only a few bytes lost.
+  if (inputs) await objectStore().put(inputsKey, inputs, 'application/json');
+
+  const made = await inTransaction(async (trx) => {
+    const number = await takeReadoutNumber(trx, labId, sessionId);
+    await insertReadout(trx, {
+      id,
+      labId,
+      sessionId,
+      dataVersionId: prepared.subject.dataVersionId,
+      number,
+      recipe,
+      recipeHash,
+      inputsKey: inputs ? inputsKey : null,
+      authorId: userId,
+    });
+    await addToOutbox(trx, { kind: 'run-readout', payload: { id } });
+    const row = await findReadout(trx, labId, id);
+    if (row === null) throw new Error('a readout that was just made is missing');
+    await writeAudit(trx, ctx, {
+      action: 'readout.create',
+      subjectKind: 'readout',
+      subjectId: id,
+      detail: { sessionId, number, recipeHash },
+    });
+    return toReadout(row);
+  });
+  pokeRelay();
+  void publishLive({ labId, kind: 'readout', sessionId, readoutId: id, state: 'queued', progress: null });
+  return made;
+}
+
+/** Long permutations go to the object store; the recipe keeps their hash. */
+function partLongInputs(recipe: Recipe): { recipe: Recipe; inputs: Uint8Array | null } {
+  const { permutations, ...scheme } = recipe.null;
+  if (!Array.isArray(permutations)) return { recipe, inputs: null };
+  const entries = permutations.reduce((sum, row) => sum + row.length, 0);
+  if (entries <= maxInlineEntries) return { recipe, inputs: null };
+  const permutationsSha256 = createHash('sha256').update(canonicalJson(permutations)).digest('hex');
+  return {
+    recipe: { ...recipe, null: { ...scheme, permutationsSha256 } },
+    inputs: writeInputs({ permutations }),
+  };
+}

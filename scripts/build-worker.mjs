@@ -1,0 +1,34 @@
+/**
+ * Bundles the worker and the entries of its child processes and threads into OUTFOLD_WORKER_DIST (dist/worker if not
+ * set), each a file of its own name. Packages stay outside.
+ */
+import { existsSync, rmSync } from 'node:fs';
+import { fileURLToPath } from 'node:url';
+import { resolve } from 'node:path';
+import { build } from 'esbuild';
+
+const root = fileURLToPath(new URL('..', import.meta.url));
+const entries = {
+  main: 'worker/main.ts',
+  'compute-child': 'worker/compute/compute-child.ts',
+  'compute-thread': 'worker/compute/compute-thread.ts',
+  'intake-child': 'worker/intake-child/intake-child.ts',
+};
+const outdir = resolve(root, process.env.OUTFOLD_WORKER_DIST || 'dist/worker');
+
+rmSync(outdir, { recursive: true, force: true });
+await build({
+  absWorkingDir: root,
+  entryPoints: Object.fromEntries(
+    Object.entries(entries).filter(([, path]) => existsSync(resolve(root, path))),
+  ),
+  outdir,
+  outExtension: { '.js': '.mjs' },
+  bundle: true,
+  platform: 'node',
+  target: 'node20',
+  format: 'esm',
+  packages: 'external',
+  sourcemap: 'linked',
+  logLevel: 'warning',
+});
