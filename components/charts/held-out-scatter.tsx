@@ -36,14 +36,12 @@ export function HeldOutScatter({
   levels,
   label,
   guess,
-  height = 430,
 }: {
   /** In ascending order of trial. */
   trials: readonly ScatterTrial[];
   levels: readonly ScatterLevel[];
   label: string;
   guess: number | null;
-  height?: number;
 }) {
   const [holder, width] = useWidth<HTMLDivElement>(520);
   const target = useRef<HTMLDivElement>(null);
@@ -56,8 +54,11 @@ export function HeldOutScatter({
   const drawn = useMemo(() => {
     const labels = trials.map((entry) => entry.label);
     const values = trials.map((entry) => entry.predicted);
-    const spread =
-      levels.length > 1 ? Math.min(...levels.slice(1).map((entry, k) => entry.level - levels[k].level)) : 0;
+    // Only a label with levels is spread sideways; moving a continuous one would draw it wrong.
+    const hasLevels = levels.length > 1 && new Set(labels).size <= levels.length;
+    const spread = hasLevels
+      ? Math.min(...levels.slice(1).map((entry, k) => entry.level - levels[k].level))
+      : 0;
     const xLow = Math.min(...labels);
     const xHigh = Math.max(...labels);
     const xs = trials.map((entry) => entry.label + jitter(entry.trial) * spread * 0.5);
@@ -119,7 +120,8 @@ export function HeldOutScatter({
     const u = new uPlot(
       {
         width,
-        height,
+        // The frame's height is the style sheet's, so that it is right before the script runs.
+        height: element.parentElement?.clientHeight ?? 430,
         padding: [padding.top, padding.right, padding.bottom, padding.left],
         legend: { show: false },
         cursor: { show: false },
@@ -147,9 +149,9 @@ export function HeldOutScatter({
       u.destroy();
       plot.current = null;
     };
-  }, [drawn, width, height]);
+  }, [drawn, width]);
 
-  useEffect(placeRing, [placeRing, width, height]);
+  useEffect(placeRing, [placeRing, width]);
   useThemeChange(() => plot.current?.redraw(false));
 
   const place = at === null ? -1 : (placeOf.get(at) ?? -1);
@@ -183,7 +185,7 @@ export function HeldOutScatter({
         onMove={(next) => store.set({ at: next < 0 ? null : trials[next].trial })}
         onPointer={nearest}
       >
-        <div className={styles.frame} style={{ height }}>
+        <div className={styles.frame}>
           <div ref={target} />
           <div ref={ring} className={styles.ring} hidden />
         </div>
