@@ -82,3 +82,12 @@ export async function listAuditEntries(
   if (beforeId !== null) void query.where('a.id', '<', beforeId);
   return query;
 }
+
+/** Chains that have rows but no head: somebody took the head away. */
+export async function listChainlessLabs(q: Knex): Promise<string[]> {
+  const rows = (await q('audit_entries as a')
+    .leftJoin('audit_heads as h', 'h.chain_id', q.raw('coalesce(a.lab_id, ?)', [noLabChain]))
+    .whereNull('h.chain_id')
+    .distinct(q.raw('coalesce(a.lab_id, ?) as chain_id', [noLabChain]))) as { chain_id: string }[];
+  return rows.map((row) => row.chain_id);
+}

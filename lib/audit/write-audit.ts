@@ -1,4 +1,4 @@
-import type { Knex } from 'knex';
+import type { Transaction } from '@/db/transaction';
 import { appendAuditEntry, lockAuditHead, noLabChain } from '@/db/repositories/audit-entries';
 import type { Ctx } from '@/lib/services/context';
 import { canonicalJson } from './canonical-json';
@@ -18,7 +18,7 @@ export interface AuditInput {
  * stands. The chain's head row stays locked until the transaction ends, so write the audit row last and keep the
  * transaction short.
  */
-export async function writeAudit(trx: Knex.Transaction, ctx: AuditAuthor, input: AuditInput): Promise<void> {
+export async function writeAudit(trx: Transaction, ctx: AuditAuthor, input: AuditInput): Promise<void> {
   const { labId, userId } = ctx.actor;
   const chainId = labId ?? noLabChain;
   const head = await lockAuditHead(trx, chainId);

@@ -136,7 +136,6 @@ function toResponse(
   if (!(definition.returns instanceof z.ZodType)) throw new Error('the route promises a Response of its own');
   const parsed = definition.returns.safeParse(outcome);
   if (!parsed.success) {
-    log.error({ requestId, issues: parsed.error.issues }, 'an answer does not fit its contract');
     throw new AppError(
       'internal',
       'Something went wrong on our side. It has been logged under this request id.',
