@@ -80,7 +80,7 @@ export const demoSessions: DemoSession[] = [
     ],
     readouts: [
       {
-        by: 'experimenter',
+        by: 'analyst',
         recipe: {
           window: scene,
           features: 'bins',
