@@ -132,7 +132,8 @@ function summariseRepeat(repeat: NestedCvRepeat): RepeatSummary | null {
   let baseline = 0;
   let held = 0;
   for (let i = 0; i < n; i += 1) {
-    if (fold[i] >= nFolds) throw new EngineError('invalidOption', `There is no fold ${fold[i]}`, { trial: i });
+    if (fold[i] >= nFolds)
+      throw new EngineError('invalidOption', `There is no fold ${fold[i]}`, { trial: i });
     if (fold[i] < 0) continue;
     rows[fold[i]].push(i);
     error += squaredError[i];
@@ -162,7 +163,9 @@ function summariseRepeat(repeat: NestedCvRepeat): RepeatSummary | null {
       }
     }
     if (!Number.isFinite(inside)) {
-      throw new EngineError('notFinite', `A pair loss beside fold ${k + 1} is not a finite number`, { fold: k });
+      throw new EngineError('notFinite', `A pair loss beside fold ${k + 1} is not a finite number`, {
+        fold: k,
+      });
     }
     const nInside = held - own.length;
     if (nInside === 0) return null;

@@ -46,8 +46,16 @@ export function perLevel(
   const n = label.length;
   requireNumbers('The label', label);
   requireNumbers('The prediction', predicted, n);
-  if (!Number.isInteger(maxLevels) || maxLevels < 0 || !Number.isInteger(quantileGroups) || quantileGroups < 1) {
-    throw new EngineError('invalidOption', 'The number of levels and of quantile groups must be whole and positive');
+  if (
+    !Number.isInteger(maxLevels) ||
+    maxLevels < 0 ||
+    !Number.isInteger(quantileGroups) ||
+    quantileGroups < 1
+  ) {
+    throw new EngineError(
+      'invalidOption',
+      'The number of levels and of quantile groups must be whole and positive',
+    );
   }
   if (n === 0) return [];
   const sorted = Float64Array.from(label).sort();
@@ -58,9 +66,7 @@ export function perLevel(
     : Array.from({ length: quantileGroups }, (_, g) => quantileOfSorted(sorted, (g + 1) / quantileGroups));
   const members: number[][] = edges.map(() => []);
   for (let i = 0; i < n; i += 1) members[firstNotBelow(edges, label[i])].push(i);
-  return members
-    .filter((rows) => rows.length > 0)
-    .map((rows) => summarise(rows, label, predicted, level));
+  return members.filter((rows) => rows.length > 0).map((rows) => summarise(rows, label, predicted, level));
 }
 
 /** Index of the first ascending edge that is at least `value`; the last edge is the maximum, so one is found. */

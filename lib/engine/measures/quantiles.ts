@@ -9,10 +9,7 @@ import { requireNumbers } from '@/lib/engine/measures/require-numbers';
  * Throws EngineError when a value is not finite or a probability lies outside [0, 1]. Cost: n log n.
  * Source: Hyndman & Fan, Am. Stat. 1996, definition 7.
  */
-export function quantiles(
-  values: ArrayLike<number>,
-  probabilities: readonly number[],
-): number[] | null {
+export function quantiles(values: ArrayLike<number>, probabilities: readonly number[]): number[] | null {
   requireNumbers('A value', values);
   if (values.length === 0) return null;
   const sorted = Float64Array.from(values).sort();

@@ -4,7 +4,10 @@ import { EngineError } from '@/lib/engine/engine-error';
 export function requirePValues(pValues: ArrayLike<number>): void {
   for (let i = 0; i < pValues.length; i += 1) {
     if (!(pValues[i] >= 0 && pValues[i] <= 1)) {
-      throw new EngineError('invalidOption', `Entry ${i + 1} is ${pValues[i]}, not a p value between 0 and 1`);
+      throw new EngineError(
+        'invalidOption',
+        `Entry ${i + 1} is ${pValues[i]}, not a p value between 0 and 1`,
+      );
     }
   }
 }

@@ -59,7 +59,9 @@ function fitTerm(variable: NuisanceVariable, values: Float64Array): NuisanceTerm
   if (sorted[0] === sorted[n - 1]) return { kind: 'constant', name, centre: [] };
   if (periodDeg !== undefined) {
     if (!(periodDeg > 0) || !Number.isFinite(periodDeg)) {
-      throw new EngineError('invalidOption', `${name}: a period of ${periodDeg}° is not positive`, { column: name });
+      throw new EngineError('invalidOption', `${name}: a period of ${periodDeg}° is not positive`, {
+        column: name,
+      });
     }
     return { kind: 'circular', name, periodDeg, centre: [] };
   }
@@ -76,7 +78,10 @@ function fitTerm(variable: NuisanceVariable, values: Float64Array): NuisanceTerm
   for (let i = 0; i < n; i += 1) squares += ((values[i] - mean) * (values[i] - mean)) / n;
   const sd = Math.sqrt(squares);
   // Differences below the rounding of the values themselves are no variance.
-  if (!(sd > 4 * Number.EPSILON * Math.max(Math.abs(sorted[0]), Math.abs(sorted[n - 1]))) || !Number.isFinite(sd)) {
+  if (
+    !(sd > 4 * Number.EPSILON * Math.max(Math.abs(sorted[0]), Math.abs(sorted[n - 1]))) ||
+    !Number.isFinite(sd)
+  ) {
     return { kind: 'constant', name, centre: [] };
   }
   return { kind: term, name, mean, sd, centre: [] };
