@@ -24,7 +24,8 @@ async function upload(ctx: Ctx, sessionId: string, file: MadeFile): Promise<stri
       fileId: id,
       number,
       body: new Blob([Uint8Array.from(part)]).stream(),
-      sizeBytes: part.length,
+      contentLength: part.length,
+      sha256: null,
     });
   }
   await completeFile(ctx, { fileId: id });
