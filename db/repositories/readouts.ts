@@ -29,14 +29,26 @@ export interface ReadoutRow {
 }
 export type NewReadout = Pick<
   ReadoutRow,
-  'id' | 'labId' | 'sessionId' | 'dataVersionId' | 'number' | 'recipe' | 'recipeHash' | 'inputsKey' | 'authorId'
+  | 'id'
+  | 'labId'
+  | 'sessionId'
+  | 'dataVersionId'
+  | 'number'
+  | 'recipe'
+  | 'recipeHash'
+  | 'inputsKey'
+  | 'authorId'
 >;
 
 /**
  * Takes the session's next readout number. The session's row stays locked until the transaction ends, so that numbers
  * are given once and without gaps.
  */
-export async function takeReadoutNumber(trx: Knex.Transaction, labId: string, sessionId: string): Promise<number> {
+export async function takeReadoutNumber(
+  trx: Knex.Transaction,
+  labId: string,
+  sessionId: string,
+): Promise<number> {
   const session = await trx('recording_sessions')
     .select('readout_count')
     .where({ id: sessionId, lab_id: labId })

@@ -42,7 +42,9 @@ export async function computeReadout(
   if ('faults' in resolution) return send({ kind: 'problems', problems: recipeProblems(resolution.faults) });
   const { resolved } = resolution;
   const { binFrom, binTo } = resolved.bins;
-  const countBytes = tables.nTrials * tables.nUnits * (binTo - binFrom) * 4;
+  const bytesPerCount = source.parts.find(({ counts }) => counts)?.counts?.bytesPerCount ?? 4;
+  const countBytes = tables.nTrials * tables.nUnits * (binTo - binFrom) * bytesPerCount;
+  // Twice: what is read is copied into shared memory.
   const tooLarge = memoryProblem(2 * countBytes, request.maxBytes);
   if (tooLarge) return send({ kind: 'problems', problems: [tooLarge] });
 
@@ -57,7 +59,8 @@ export async function computeReadout(
     const planned = planReadout(input);
     if (!planned.ok) return await send({ kind: 'problems', problems: planned.problems });
     const plan = shareArrays<ReadoutPlan>(planned.plan);
-    const overfull = memoryProblem(plan.estimate.bytes, request.maxBytes);
+    const needed = input.counts.byteLength + pool.threads.length * plan.estimate.bytes;
+    const overfull = memoryProblem(needed, request.maxBytes);
     if (overfull) return await send({ kind: 'problems', problems: [overfull] });
 
     const outputs = await runPlan(request, pool, input, plan, send);
@@ -105,12 +108,12 @@ async function runPlan(
     const output = decodeOutput(bytes);
     if (chunkOf.has(output.id)) outputs.set(output.id, output);
   }
-  const keepsParts = plan.estimate.seconds > request.keepPartsAboveSeconds;
+  const keepsParts = plan.estimate.seconds / pool.threads.length > request.keepPartsAboveSeconds;
   const meter = progressMeter(plan.chunks, new Set(outputs.keys()), () => performance.now());
   const tell = () => void send({ kind: 'progress', progress: meter.read() });
   const timer = setInterval(tell, progressEveryMs);
-  const room = Math.max(0, request.maxBytes - plan.estimate.bytes);
-  const cacheBytes = Math.min(maxCacheBytes, Math.max(64 * 2 ** 20, room / pool.threads.length));
+  const room = Math.max(0, request.maxBytes - input.counts.byteLength) / pool.threads.length;
+  const cacheBytes = Math.min(maxCacheBytes, Math.max(plan.estimate.bytes, room / 2));
   try {
     await runChunks(pool, input, plan, cacheBytes, outputs, {
       begun: (id) => meter.begun(chunkOf.get(id)!),
