@@ -37,7 +37,7 @@ export type PenaltySpec =
 
 export type ComponentsSpec =
   | { value: number }
-  /** Chosen among 0, 1 … `max`; left out: min(20, what the smallest training set allows). */
+  /** Chosen among 1 … `max` (20 where left out); numbers beyond what a training set allows act as the largest that it does. */
   | (ChoiceSpec & { max?: number });
 
 export type EstimatorSpec =
@@ -139,14 +139,24 @@ export interface Chunk {
   job: ChunkJob;
 }
 
-/** Which piece a chunk is. `task` indexes ReadoutPlan.tasks; `from`…`to` is a half-open range of label draws. */
+/**
+ * Which piece a chunk is. `task` indexes ReadoutPlan.tasks, `split` that task's fold set, `from`…`to` is half-open.
+ * - observed: held-out predictions for the observed labels.
+ * - draws: squared errors for label draws from…to.
+ * - pair: predictions of both folds from the trials of neither (nested cross-validation interval).
+ * - batch: held-out R² of tasks from…to, all splits of each (many small analyses).
+ * - weights: weights and patterns of one split.
+ * - generalisation: readouts trained in windows from…to, tested in all windows.
+ * - injection: one generated session of a given size.
+ */
 export type ChunkJob =
-  | { kind: 'observed'; task: number; repeat: number; fold: number }
-  | { kind: 'draws'; task: number; repeat: number; fold: number; from: number; to: number }
+  | { kind: 'observed'; task: number; split: number }
+  | { kind: 'draws'; task: number; split: number; from: number; to: number }
   | { kind: 'pair'; task: number; repeat: number; foldA: number; foldB: number }
-  | { kind: 'generalisation'; task: number; repeat: number; fold: number; from: number; to: number }
-  | { kind: 'injection'; task: number; size: number; draw: number }
-  | { kind: 'weights'; task: number };
+  | { kind: 'weights'; task: number; split: number }
+  | { kind: 'batch'; from: number; to: number }
+  | { kind: 'generalisation'; view: number; split: number; from: number; to: number }
+  | { kind: 'injection'; control: number; size: number; draw: number };
 
 /** What a chunk gives back: named numbers and typed arrays only, so that it may be stored, sent or cloned. */
 export interface ChunkOutput {
@@ -163,6 +173,7 @@ export interface ChunkCache {
 /** Training and test positions of one fold of one repeat. */
 export interface FoldSplit {
   repeat: number;
+  /** Held-out fold; −1 where a split is not one of the folds. */
   fold: number;
   train: Int32Array;
   test: Int32Array;
@@ -187,8 +198,8 @@ export interface Task {
   draws: number;
   /** Splits to use: index into ReadoutPlan.foldSets. */
   foldSet: number;
-  /** Whether pair fits for the nested-cross-validation interval are wanted. */
-  hasInterval: boolean;
+  /** Train on a random part of each split's training trials (learning curve). */
+  trainLimit?: { size: number; stream: number };
 }
 
 /** Which numbers of a trial become its features. */
@@ -214,6 +225,11 @@ export interface FoldSet {
   /** Trials (of the session) that take part, ascending; positions index this. */
   trials: Int32Array;
   nRepeats: number;
+  nFolds: number;
+  /** Session trials that training keeps away from held-out ones. */
+  purgeTrials: number;
+  /** Each position's fold, one array a repeat. */
+  foldOf: Int32Array[];
   splits: FoldSplit[];
 }
 
@@ -223,9 +239,10 @@ export interface ReadoutPlan {
   chunks: Chunk[];
   /** Draws of the shuffled control after all limits (for example n − 1 circular shifts). */
   nDraws: number;
-  /** ln of the number of distinct label arrangements under the scheme. */
-  logArrangements: number;
+  /** ln of the number of distinct label arrangements under the scheme; null where it is not known. */
+  logArrangements: number | null;
   warnings: EngineProblem[];
+  /** `seconds`: on one core of this century's servers with the native backend. `bytes`: peak of one thread, without the input. */
   estimate: { flops: number; bytes: number; seconds: number };
 }
 
