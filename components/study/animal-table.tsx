@@ -16,6 +16,7 @@ const columns: TableColumn<AnimalLine>[] = [
   {
     key: 'code',
     head: 'Animal',
+    className: 'nowrap',
     value: (line) => line.animal.code,
     cell: (line) => (
       <>

@@ -20,6 +20,8 @@ export interface ForestColumn {
   cell: (row: ForestRow, readout: ReadoutSummary | null, animalCode: string) => ReactNode;
 }
 
+const readoutColumns = new Set(['r2', 'interval', 'p', 'verdict']);
+
 /** Under its animal a session needs only the rest of its name. */
 function shortName(name: string, animalCode: string): string {
   return name.startsWith(`${animalCode}, `) ? name.slice(animalCode.length + 2) : name;
@@ -122,4 +124,5 @@ export function forestColumns({
       ),
     },
   ];
+  return hasReadouts ? columns : columns.filter((column) => !readoutColumns.has(column.key));
 }

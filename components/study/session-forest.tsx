@@ -34,7 +34,7 @@ export function SessionForest({ groups }: { groups: readonly ForestGroup[] }) {
   const axis = sharedAxis(readouts.map((readout) => ({ value: readout.r2, interval: readout.r2Interval })));
   const [scrollRef, widthPx] = useWidth<HTMLDivElement>(1000);
   const glyphPx = widthPx < 560 ? Math.max(240, widthPx - 4) : wideGlyphPx;
-  const columns = forestColumns({ axis, glyphPx });
+  const columns = forestColumns({ axis, glyphPx, hasReadouts: labels.length > 0 });
   const nSessions = shown.reduce((sum, group) => sum + group.rows.length, 0);
 
   const ordered = (rows: readonly ForestRow[]) => {
@@ -80,7 +80,7 @@ export function SessionForest({ groups }: { groups: readonly ForestGroup[] }) {
         aria-label="Sessions with held-out R²"
         ref={scrollRef}
       >
-        <table className="stack forest" role="table">
+        <table className={labels.length > 0 ? 'stack forest' : 'forest'} role="table">
           <caption className="vh">Sessions with held-out R², grouped by animal</caption>
           <thead role="rowgroup">
             <tr role="row">

@@ -19,12 +19,13 @@ const columns: TableColumn<StudyLine>[] = [
     head: 'Study',
     value: (line) => line.study.name,
     cell: (line) => <Link href={`/studies/${line.study.id}`}>{line.study.name}</Link>,
-    widthPx: 280,
+    className: 'c-study',
   },
   {
     key: 'question',
     head: 'Question',
-    className: 'say wraps',
+    className: 'say wraps c-question',
+    headClassName: 'c-question',
     cell: (line) => line.study.question.replaceAll('**', ''),
   },
   {
@@ -65,7 +66,7 @@ export function StudyTable({ lines }: { lines: readonly StudyLine[] }) {
       rows={lines}
       rowKey={(line) => line.study.id}
       sortBy={{ key: 'since', descending: true }}
-      minWidthPx={640}
+      className="studies"
     />
   );
 }

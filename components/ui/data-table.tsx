@@ -32,6 +32,7 @@ export interface TableColumn<Row> {
   headDrawing?: ReactNode;
   /** Class of the cells, as `iv` for an interval column. */
   className?: string;
+  headClassName?: string;
   widthPx?: number;
 }
 
@@ -96,10 +97,10 @@ export function DataTable<Row>({
               const words = (
                 <>
                   {column.head}
-                  {column.unit || sorted ? (
+                  {sorted && !column.unit ? <SortArrow descending={sorted === 'desc'} /> : null}
+                  {column.unit ? (
                     <span className="u">
                       {column.unit}
-                      {column.unit && sorted ? ' ' : ''}
                       {sorted ? <SortArrow descending={sorted === 'desc'} /> : null}
                     </span>
                   ) : null}
@@ -109,7 +110,10 @@ export function DataTable<Row>({
                 <th
                   key={column.key}
                   scope="col"
-                  className={column.numeric ? 'num' : undefined}
+                  className={
+                    [column.numeric ? 'num' : '', column.headClassName ?? ''].filter(Boolean).join(' ') ||
+                    undefined
+                  }
                   aria-sort={sorted ? (sorted === 'desc' ? 'descending' : 'ascending') : undefined}
                   style={column.widthPx ? { width: column.widthPx } : undefined}
                 >

@@ -7,8 +7,8 @@ const pattern = new RegExp(
     `${notInsideWord}(?:p|r|ρ|τ²?|λ)${gap}?[=<]${gap}?${number}`,
     // 0.45 [0.40, 0.50] and an interval alone
     `(?:${notInsideWord}${number}${gap})?\\[${number},${gap}${number}\\]`,
-    // plain numbers, with their per cent sign; R² and P1 stay words
-    `${notInsideWord}${number}(?![\\w²])(?:${gap}?%)?`,
+    // plain numbers; R² and P1 stay words, and so does the per cent sign, whose space would be a whole figure wide in mono
+    `${notInsideWord}${number}(?![\\w²])`,
     // Greek letters exist in the mono face only
     '[\\u0370-\\u03ff]²?',
   ].join('|'),

@@ -86,17 +86,23 @@ export default async function StudyPage({ params }: PageProps) {
       <Section
         title="Sessions"
         id="sessions"
-        why="Each row draws its own interval, all of them on one axis."
+        why={
+          nReadouts > 0
+            ? 'Each row draws its own interval, all of them on one axis.'
+            : 'Grouped by animal, by day.'
+        }
         side={nReadouts > 0 ? <ForestLegend /> : null}
       >
         {rows.length > 0 ? (
           <>
             <SessionForest groups={groups} />
-            <p className="cap">
-              {numbers(
-                'Marks: held-out R² over trials that were out of the fold. Bars: 95 % interval by nested cross-validation, broken because none of these readouts follows a plan frozen beforehand. Hatched: middle 95 % of that readout’s shuffles.',
-              )}
-            </p>
+            {nReadouts > 0 ? (
+              <p className="cap">
+                {numbers(
+                  'Marks: held-out R² over trials that were out of the fold. Bars: 95 % interval by nested cross-validation, broken because none of these readouts follows a plan frozen beforehand. Hatched: middle 95 % of that readout’s shuffles.',
+                )}
+              </p>
+            ) : null}
           </>
         ) : animals.length === 0 ? (
           <EmptyState
