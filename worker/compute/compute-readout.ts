@@ -1,3 +1,4 @@
+import type { Problem } from '@/lib/contracts/problem';
 import { finishReadout } from '@/lib/engine/readout/finish-readout';
 import { planReadout } from '@/lib/engine/readout/plan-readout';
 import type { ChunkOutput, ReadoutInput, ReadoutPlan } from '@/lib/engine/readout/types';
@@ -57,7 +58,7 @@ export async function computeReadout(
     });
     const startedAt = performance.now();
     const planned = planReadout(input);
-    if (!planned.ok) return await send({ kind: 'problems', problems: planned.problems });
+    if (!planned.ok) return await send({ kind: 'problems', problems: gravestFirst(planned.problems) });
     const plan = shareArrays<ReadoutPlan>(planned.plan);
     const needed = input.counts.byteLength + pool.threads.length * plan.estimate.bytes;
     const overfull = memoryProblem(needed, request.maxBytes);
@@ -130,6 +131,11 @@ async function runPlan(
     progress: { done: 1_000, total: 1_000, phase: 'Putting it together', secondsLeft: 0 },
   });
   return outputs;
+}
+
+function gravestFirst(problems: Problem[]): Problem[] {
+  const rank = { stops: 0, warns: 1, notes: 2 };
+  return [...problems].sort((a, b) => rank[a.severity] - rank[b.severity]);
 }
 
 function namesOf(values: (string | null)[], index: Int32Array): string[] {

@@ -24,7 +24,8 @@ export async function estimateReadout(
   const sizes = { trials: resolved.counts.trialsUsed, units: resolved.counts.unitsUsed };
   const planned = planReadout({
     ...resolved.input,
-    counts: new Uint8Array(0),
+    // The plan looks at the number of counts alone; memory that nobody writes to costs nothing.
+    counts: new Uint8Array(resolved.input.nTrials * resolved.input.nUnits * (binTo - binFrom)),
     nBins: binTo - binFrom,
     windowStartMs: subject.windowStartMs + binFrom * subject.binWidthMs,
   });
