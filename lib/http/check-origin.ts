@@ -5,10 +5,11 @@ const safeMethods = new Set(['GET', 'HEAD', 'OPTIONS']);
 
 /**
  * Refuses an unsafe request that rides on a cookie and does not come from our own pages. Requests with an
- * Authorization header carry no ambient authority and pass.
+ * Authorization header, or without any cookie, carry no authority that a foreign page could borrow, and pass.
  */
 export function checkOrigin(request: Request): void {
   if (safeMethods.has(request.method) || request.headers.has('authorization')) return;
+  if (!request.headers.has('cookie')) return;
   const origin = request.headers.get('origin');
   if (origin === null) {
     if (request.headers.get('sec-fetch-site') === 'same-origin') return;

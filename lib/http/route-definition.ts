@@ -55,7 +55,12 @@ export interface RouteDefinition<
   secretAnswer?: boolean;
   /** The request must name the version it changes (If-Match). */
   requiresVersion?: boolean;
-  handle(
-    input: HandleInput<A, P, Q, B>,
-  ): Promise<Response | (R extends z.ZodType ? z.input<R> : never)> | Response;
+  handle(input: HandleInput<A, P, Q, B>): Promise<Response | Answer<R>> | Response;
 }
+
+/** What a verb hands back for a contract: its input side, or nothing where the contract is nothing. */
+export type Answer<R extends ReturnsKind> = R extends z.ZodType
+  ? undefined extends z.input<R>
+    ? z.input<R> | void
+    : z.input<R>
+  : never;

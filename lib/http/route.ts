@@ -114,7 +114,7 @@ async function answer<
   const carryOut = async (): Promise<Response> => {
     const input = { ctx, params: params.data, query: query.data, body, request, requestId, ifVersion };
     const outcome = await definition.handle(input as HandleInput<A, P, Q, B>);
-    return outcome instanceof Response ? outcome : toResponse(definition, request, outcome, requestId);
+    return outcome instanceof Response ? outcome : toResponse(definition, request, outcome);
   };
   if (request.method !== 'POST' || ctx === null || bodyKind === 'stream') return carryOut();
   return withIdempotency(
@@ -129,7 +129,6 @@ function toResponse(
   definition: { returns: ReturnsKind; status?: number; statusOf?: (answer: never) => number },
   request: Request,
   outcome: unknown,
-  requestId: string,
 ): Response {
   const status = definition.status ?? 200;
   if (status === 204) return new Response(null, { status });

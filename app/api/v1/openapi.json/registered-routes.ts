@@ -3,25 +3,45 @@ import type { RegisteredRoute } from '@/lib/http/openapi/registered-route';
 import * as route0 from '@/app/api/health/route';
 import * as route1 from '@/app/api/v1/animals/[id]/route';
 import * as route2 from '@/app/api/v1/animals/route';
-import * as route3 from '@/app/api/v1/me/route';
-import * as route4 from '@/app/api/v1/sessions/[id]/exclusions/route';
-import * as route5 from '@/app/api/v1/sessions/[id]/route';
-import * as route6 from '@/app/api/v1/sessions/route';
-import * as route7 from '@/app/api/v1/studies/[id]/route';
-import * as route8 from '@/app/api/v1/studies/route';
-import * as route9 from '@/app/api/v1/tokens/[id]/route';
-import * as route10 from '@/app/api/v1/tokens/route';
+import * as route3 from '@/app/api/v1/events/route';
+import * as route4 from '@/app/api/v1/files/[id]/complete/route';
+import * as route5 from '@/app/api/v1/files/[id]/parts/[n]/route';
+import * as route6 from '@/app/api/v1/files/[id]/route';
+import * as route7 from '@/app/api/v1/me/route';
+import * as route8 from '@/app/api/v1/readouts/[id]/cancel/route';
+import * as route9 from '@/app/api/v1/readouts/[id]/predictions/route';
+import * as route10 from '@/app/api/v1/readouts/[id]/route';
+import * as route11 from '@/app/api/v1/sessions/[id]/exclusions/route';
+import * as route12 from '@/app/api/v1/sessions/[id]/files/route';
+import * as route13 from '@/app/api/v1/sessions/[id]/readouts/estimate/route';
+import * as route14 from '@/app/api/v1/sessions/[id]/readouts/route';
+import * as route15 from '@/app/api/v1/sessions/[id]/route';
+import * as route16 from '@/app/api/v1/sessions/route';
+import * as route17 from '@/app/api/v1/studies/[id]/route';
+import * as route18 from '@/app/api/v1/studies/route';
+import * as route19 from '@/app/api/v1/tokens/[id]/route';
+import * as route20 from '@/app/api/v1/tokens/route';
 
 export const registeredRoutes: readonly RegisteredRoute[] = [
   { path: '/api/health', methods: { GET: route0.GET } },
   { path: '/api/v1/animals/{id}', methods: { GET: route1.GET, PATCH: route1.PATCH } },
   { path: '/api/v1/animals', methods: { GET: route2.GET, POST: route2.POST } },
-  { path: '/api/v1/me', methods: { GET: route3.GET } },
-  { path: '/api/v1/sessions/{id}/exclusions', methods: { GET: route4.GET, POST: route4.POST } },
-  { path: '/api/v1/sessions/{id}', methods: { GET: route5.GET, PATCH: route5.PATCH } },
-  { path: '/api/v1/sessions', methods: { GET: route6.GET, POST: route6.POST } },
-  { path: '/api/v1/studies/{id}', methods: { GET: route7.GET, PATCH: route7.PATCH } },
-  { path: '/api/v1/studies', methods: { GET: route8.GET, POST: route8.POST } },
-  { path: '/api/v1/tokens/{id}', methods: { DELETE: route9.DELETE } },
-  { path: '/api/v1/tokens', methods: { GET: route10.GET, POST: route10.POST } },
+  { path: '/api/v1/events', methods: { GET: route3.GET } },
+  { path: '/api/v1/files/{id}/complete', methods: { POST: route4.POST } },
+  { path: '/api/v1/files/{id}/parts/{n}', methods: { PUT: route5.PUT } },
+  { path: '/api/v1/files/{id}', methods: { GET: route6.GET, DELETE: route6.DELETE } },
+  { path: '/api/v1/me', methods: { GET: route7.GET } },
+  { path: '/api/v1/readouts/{id}/cancel', methods: { POST: route8.POST } },
+  { path: '/api/v1/readouts/{id}/predictions', methods: { GET: route9.GET } },
+  { path: '/api/v1/readouts/{id}', methods: { GET: route10.GET } },
+  { path: '/api/v1/sessions/{id}/exclusions', methods: { GET: route11.GET, POST: route11.POST } },
+  { path: '/api/v1/sessions/{id}/files', methods: { GET: route12.GET, POST: route12.POST } },
+  { path: '/api/v1/sessions/{id}/readouts/estimate', methods: { POST: route13.POST } },
+  { path: '/api/v1/sessions/{id}/readouts', methods: { GET: route14.GET, POST: route14.POST } },
+  { path: '/api/v1/sessions/{id}', methods: { GET: route15.GET, PATCH: route15.PATCH } },
+  { path: '/api/v1/sessions', methods: { GET: route16.GET, POST: route16.POST } },
+  { path: '/api/v1/studies/{id}', methods: { GET: route17.GET, PATCH: route17.PATCH } },
+  { path: '/api/v1/studies', methods: { GET: route18.GET, POST: route18.POST } },
+  { path: '/api/v1/tokens/{id}', methods: { DELETE: route19.DELETE } },
+  { path: '/api/v1/tokens', methods: { GET: route20.GET, POST: route20.POST } },
 ];

@@ -1,0 +1,80 @@
+import { v7 } from 'uuid';
+import { db } from '@/db/connection';
+import { insertReadout, takeReadoutNumber } from '@/db/repositories/readouts';
+import { inTransaction } from '@/db/transaction';
+import { recipeSchema } from '@/lib/contracts/recipe';
+import { createFile } from '@/lib/services/files/create-file';
+import { createToken } from '@/lib/services/tokens/create-token';
+import { insertSession, type LabRows } from '@/tests/support/rows';
+import { actorOf, giveData } from './support';
+
+/** One thing of each kind in a lab; the token belongs to the member. */
+export interface Things {
+  studyId: string;
+  animalId: string;
+  sessionId: string;
+  emptySessionId: string;
+  fileId: string;
+  readoutId: string;
+  tokenId: string;
+}
+
+/** Makes one of each, with `owner` as the author of the lab's things and `member` as the owner of the token. */
+export async function makeThings(owner: LabRows, member: LabRows = owner): Promise<Things> {
+  const { sessionId, studyId, animalId } = await insertSession(owner);
+  const empty = await insertSession(owner, { studyId, animalId });
+  await giveData(owner, sessionId, { trials: 12, units: 4, bins: 3 });
+  const ctx = { actor: actorOf({ ...owner, role: 'lead' }), requestId: v7() };
+  const file = await createFile(ctx, { sessionId, name: 'counts.npy', sizeBytes: 10 });
+  const token = await createToken(
+    { actor: actorOf(member), requestId: v7() },
+    { name: 'rig', scopes: ['read'], expiresAt: new Date(Date.now() + 3_600_000).toISOString() },
+  );
+  return {
+    studyId,
+    animalId,
+    sessionId,
+    emptySessionId: empty.sessionId,
+    fileId: file.id,
+    readoutId: await insertQueuedReadout(owner, sessionId),
+    tokenId: token.id,
+  };
+}
+
+async function insertQueuedReadout(owner: LabRows, sessionId: string): Promise<string> {
+  const id = v7();
+  const version = await db()<{ id: string; session_id: string }>('data_versions')
+    .where({ session_id: sessionId })
+    .first();
+  const recipe = recipeSchema.parse({
+    label: 'shared',
+    labelTransform: { kind: 'none' },
+    trials: { all: true },
+    units: { all: true },
+    exclusions: 'none',
+    window: { startMs: 0, endMs: 60 },
+    features: 'windowMean',
+    transform: 'none',
+    estimator: { kind: 'leastSquares' },
+    folds: { kind: 'stratified', k: 3 },
+    nuisance: {},
+    null: { kind: 'none' },
+    controls: [],
+    views: [],
+    seed: 1,
+  });
+  await inTransaction(async (trx) =>
+    insertReadout(trx, {
+      id,
+      labId: owner.labId,
+      sessionId,
+      dataVersionId: version!.id,
+      number: await takeReadoutNumber(trx, owner.labId, sessionId),
+      recipe,
+      recipeHash: 'c'.repeat(64),
+      inputsKey: null,
+      authorId: owner.userId,
+    }),
+  );
+  return id;
+}
