@@ -5,6 +5,10 @@ import { parseEnv } from 'node:util';
 /**
  * The settings: the environment, completed from a `.env` file in the project folder where there is one. An empty
  * variable counts as not set.
+ *
+ * @param {string} root
+ * @param {Record<string, string | undefined>} [environment]
+ * @returns {Record<string, string>}
  */
 export function readSettings(root, environment = process.env) {
   let fromFile = {};
