@@ -80,7 +80,8 @@ function factorFold(
     estimator.kind === 'ridge' ? penalties[penalties.length - 1] : estimator.kind === 'pls' ? Infinity : 0;
   const { zTrain, zTest } = scaled;
   const factor = spectralFactor(zTrain, train.length, zTest, test.length, scaled.p, smallest, linalg);
-  const most = Math.max(0, Math.min(scaled.p, train.length - (base?.rank ?? 1)));
+  const freedom = Math.max(0, train.length - (base?.rank ?? 1));
+  const most = Math.min(scaled.p, freedom);
   let candidates: Candidate[];
   let plsComponents = 0;
   if (estimator.kind === 'pcr' || estimator.kind === 'pls') {
@@ -92,12 +93,12 @@ function factorFold(
     const empty = new Float64Array(0);
     candidates = numbers.map((k) =>
       estimator.kind === 'pcr'
-        ? componentCandidate(factor, Math.min(k, most), p)
+        ? componentCandidate(factor, Math.min(k, most), p, freedom)
         : { penalty: null, components: Math.min(k, most), fit: empty, predict: empty },
     );
     if (estimator.kind === 'pls') plsComponents = Math.min(Math.max(...numbers), most);
   } else {
-    candidates = Array.from(penalties, (penalty) => ridgeCandidate(factor, penalty, p));
+    candidates = Array.from(penalties, (penalty) => ridgeCandidate(factor, penalty, p, freedom));
     if (estimator.kind === 'leastSquares') candidates[0].penalty = null;
   }
   const { kept, mean, sd } = scaled;

@@ -10,8 +10,17 @@ export interface Candidate {
   predict: Float64Array;
 }
 
-/** Ridge: the gains of one penalty λ on a factor. λ = 0 on an 'svd' factor is least squares of minimum norm. */
-export function ridgeCandidate(factor: SpectralFactor, penalty: number, p: number): Candidate {
+/**
+ * Ridge: the gains of one penalty λ on a factor. λ = 0 on an 'svd' factor is least squares of minimum norm.
+ * `freedom`: nTrain less the rank of the unpenalised part; centred features have at most so many directions, whatever
+ * rounding leaves in the others.
+ */
+export function ridgeCandidate(
+  factor: SpectralFactor,
+  penalty: number,
+  p: number,
+  freedom: number,
+): Candidate {
   const { w, r, kind } = factor;
   const fit = new Float64Array(r);
   const predict = new Float64Array(r);
@@ -20,7 +29,7 @@ export function ridgeCandidate(factor: SpectralFactor, penalty: number, p: numbe
   for (let j = 0; j < r; j++) {
     if (kind === 'svd') {
       const s = Math.sqrt(w[j]);
-      if (!(s > cutoff)) continue;
+      if (!(s > cutoff) || j >= freedom) continue;
       fit[j] = w[j] / (w[j] + penalty);
       predict[j] = s / (w[j] + penalty);
     } else {
@@ -32,8 +41,13 @@ export function ridgeCandidate(factor: SpectralFactor, penalty: number, p: numbe
 }
 
 /** Principal components: least squares on the first `components` directions of an 'svd' factor. */
-export function componentCandidate(factor: SpectralFactor, components: number, p: number): Candidate {
-  const all = ridgeCandidate(factor, 0, p);
+export function componentCandidate(
+  factor: SpectralFactor,
+  components: number,
+  p: number,
+  freedom: number,
+): Candidate {
+  const all = ridgeCandidate(factor, 0, p, freedom);
   const used = (x: number, j: number): number => (j < components ? x : 0);
   return { penalty: null, components, fit: all.fit.map(used), predict: all.predict.map(used) };
 }

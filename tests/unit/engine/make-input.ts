@@ -1,6 +1,6 @@
-import { randomInteger } from '@/lib/engine/random/random-integer';
 import { randomNormal } from '@/lib/engine/random/random-normal';
 import { randomPoisson } from '@/lib/engine/random/random-poisson';
+import { shuffle } from '@/lib/engine/random/shuffle';
 import { splitGenerator } from '@/lib/engine/random/split-generator';
 import type { ReadoutInput } from '@/lib/engine/readout/types';
 
@@ -18,9 +18,10 @@ export interface MadeSession {
 export function makeInput(options: MadeSession = {}, changes: Partial<ReadoutInput> = {}): ReadoutInput {
   const { nTrials = 60, nUnits = 8, nBins = 4, signal = 0.5, isContinuous = false, seed = 1 } = options;
   const generator = splitGenerator(seed, 'test session');
-  const y = Float64Array.from({ length: nTrials }, () =>
-    isContinuous ? randomNormal(generator) : randomInteger(generator, 6) / 5,
+  const y = Float64Array.from({ length: nTrials }, (_, i) =>
+    isContinuous ? randomNormal(generator) : (i % 6) / 5,
   );
+  shuffle(y, generator);
   const tuning = Float64Array.from({ length: nUnits }, () => signal * randomNormal(generator));
   const rate = Float64Array.from({ length: nUnits }, () => 1 + 3 * Math.abs(randomNormal(generator)));
   const counts = new Int32Array(nTrials * nUnits * nBins);
