@@ -27,14 +27,17 @@ function shortName(name: string, animalCode: string): string {
   return name.startsWith(`${animalCode}, `) ? name.slice(animalCode.length + 2) : name;
 }
 
+/** The columns of the sessions table; those of readouts only where there are any. */
 export function forestColumns({
   axis,
   glyphPx,
+  hasReadouts,
 }: {
   axis: IntervalAxisRange;
   glyphPx: number;
+  hasReadouts: boolean;
 }): ForestColumn[] {
-  return [
+  const columns: ForestColumn[] = [
     {
       key: 'day',
       head: 'Session',

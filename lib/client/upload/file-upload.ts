@@ -200,7 +200,7 @@ export class FileUpload {
         return await work();
       } catch (error) {
         signal.throwIfAborted();
-        const isPassing = error instanceof ApiError && error.isPassing;
+        const isPassing = error instanceof ApiError && (error.isPassing || arrivedDamaged(error));
         if (!isPassing || attempt >= retryAfterMs.length) throw error;
         await this.#wait(retryAfterMs[attempt]);
       }
@@ -258,3 +258,8 @@ export class FileUpload {
 
 /** Tells a pause from a failure. */
 class PauseSignal extends Error {}
+
+/** A part whose octets changed on the way is worth sending again. */
+function arrivedDamaged(error: ApiError): boolean {
+  return error.faults.some((fault) => fault.code === 'part-digest');
+}

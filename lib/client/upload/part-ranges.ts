@@ -5,9 +5,9 @@ export interface PartRange {
   to: number;
 }
 
-/** Cuts a file into parts of `partSizeBytes`, the last one shorter. An empty file is one empty part. */
+/** Cuts a file into parts of `partSizeBytes`, the last one shorter. An empty file has none. */
 export function partRanges(sizeBytes: number, partSizeBytes: number): PartRange[] {
-  const nParts = Math.max(1, Math.ceil(sizeBytes / partSizeBytes));
+  const nParts = Math.ceil(sizeBytes / partSizeBytes);
   return Array.from({ length: nParts }, (_, index) => ({
     number: index + 1,
     from: index * partSizeBytes,
