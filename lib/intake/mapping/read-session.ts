@@ -10,13 +10,13 @@ import type { SourceFiles } from '@/lib/intake/mapping/source-files';
 import type { SessionData } from '@/lib/intake/session-data';
 
 /**
- * Reads a session as its mapping says and checks it. `data` is null where a problem stops.
- * A refusal of one part ends the reading; faults that can be told together are.
+ * Reads a session as its mapping says and checks it. `data` is null where a problem stops; `read` is what could be read
+ * even so, for a preview. A refusal of one part ends the reading; faults that can be told together are.
  */
 export async function readSession(
   files: SourceFiles,
   intake: Intake,
-): Promise<{ data: SessionData | null; problems: Problem[] }> {
+): Promise<{ data: SessionData | null; read: SessionData | null; problems: Problem[] }> {
   try {
     const tableTrials = await readTable(files, intake.trials, 'trial');
     const units = intake.units === undefined ? [] : await readTable(files, intake.units, 'unit');
@@ -33,7 +33,7 @@ export async function readSession(
       }),
       ...compareLengths(builder.shape, trials[0].values.length, units[0]?.values.length, fileName),
     ];
-    if (faults.length > 0) return { data: null, problems: faults };
+    if (faults.length > 0) return { data: null, read: null, problems: faults };
     const data: SessionData = {
       counts: builder.counts,
       nTrials,
@@ -46,9 +46,10 @@ export async function readSession(
       labels,
     };
     const problems = checkSession(data, { arrayType, longWithoutShape: isLongWithoutShape(intake) });
-    return { data: problems.some((problem) => problem.severity === 'stops') ? null : data, problems };
+    const isStopped = problems.some((problem) => problem.severity === 'stops');
+    return { data: isStopped ? null : data, read: data, problems };
   } catch (error) {
-    if (error instanceof IntakeRefusal) return { data: null, problems: [error.toProblem()] };
+    if (error instanceof IntakeRefusal) return { data: null, read: null, problems: [error.toProblem()] };
     throw error;
   }
 }

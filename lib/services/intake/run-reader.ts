@@ -1,0 +1,115 @@
+import { fork, type ChildProcess } from 'node:child_process';
+import { readFile } from 'node:fs/promises';
+import type { FromReader, ReaderAnswer, ReaderTask, ToReader } from '@/lib/intake/reader-messages';
+import { readerEntry } from '@/lib/services/intake/reader-entry';
+import { ReaderLost } from '@/lib/services/intake/reader-lost';
+
+export interface ReaderOptions {
+  /** Bytes of one of the task's files. */
+  read(fileId: string, offset: number, length: number): Promise<Uint8Array>;
+  /** Keeps one object of the canonical form; only an intake needs it. */
+  keep?(dataHash: string, name: string, bytes: Uint8Array): Promise<void>;
+  maxSeconds: number;
+  maxBytes?: number;
+  abort?: AbortSignal;
+}
+
+const DEFAULT_MAX_BYTES = 512 * 1024 * 1024;
+const LOOK_EVERY_MS = 200;
+const PAGE_BYTES = 4096;
+
+/**
+ * Does a task in a process of its own that has no credentials, ends within `maxSeconds` and is killed above `maxBytes`
+ * of memory.
+ * @throws ReaderLost where the process ended without an answer; what `read` or `keep` threw; the abort's reason
+ */
+export function runReader<Kind extends ReaderAnswer['kind']>(
+  task: ReaderTask,
+  kind: Kind,
+  options: ReaderOptions,
+): Promise<Extract<ReaderAnswer, { kind: Kind }>> {
+  const { file, execArgv } = readerEntry();
+  const child = fork(file, [], {
+    execArgv,
+    serialization: 'advanced',
+    env: { NODE_ENV: process.env.NODE_ENV ?? 'production' },
+    stdio: ['ignore', 'ignore', 'pipe', 'ipc'],
+  });
+  return new Promise((resolve, reject) => {
+    let failure: Error | null = null;
+    let answer: ReaderAnswer | null = null;
+    let words = '';
+    const kill = (why: Error): void => {
+      failure ??= why;
+      child.kill('SIGKILL');
+    };
+    const limit = setTimeout(
+      () => kill(new ReaderLost('time', `reading took longer than ${options.maxSeconds} s`)),
+      options.maxSeconds * 1000,
+    );
+    const looking = setInterval(() => {
+      void memoryOf(child).then((bytes) => {
+        if (bytes > (options.maxBytes ?? DEFAULT_MAX_BYTES))
+          kill(new ReaderLost('memory', `reading needed ${Math.round(bytes / 1024 / 1024)} MiB`));
+      });
+    }, LOOK_EVERY_MS);
+    const onAbort = (): void =>
+      kill(options.abort?.reason instanceof Error ? options.abort.reason : new Error('stopped'));
+    options.abort?.addEventListener('abort', onAbort, { once: true });
+    if (options.abort?.aborted) onAbort();
+
+    child.stderr?.on('data', (chunk: Buffer) => (words = (words + chunk.toString()).slice(-2000)));
+    child.on('message', (message: FromReader) => {
+      if (message.kind === 'answer') answer = message.answer;
+      else if (message.kind === 'failed') failure ??= new ReaderLost('crash', message.message);
+      else serve(child, message, options).catch((error: unknown) => kill(error as Error));
+    });
+    child.once('error', kill);
+    // 'close' and not 'exit': the last message may still be on its way.
+    child.once('close', (code, signal) => {
+      clearTimeout(limit);
+      clearInterval(looking);
+      options.abort?.removeEventListener('abort', onAbort);
+      if (failure !== null) reject(failure);
+      else if (answer?.kind === kind) resolve(answer as Extract<ReaderAnswer, { kind: Kind }>);
+      else if (/heap out of memory|allocation failed/i.test(words))
+        reject(new ReaderLost('memory', 'reading ran out of memory'));
+      else reject(new ReaderLost('crash', `the reader ended early (${signal ?? `code ${code}`}): ${words}`));
+    });
+    send(child, { kind: 'task', task });
+  });
+}
+
+async function serve(
+  child: ChildProcess,
+  message: Extract<FromReader, { request: number }>,
+  options: ReaderOptions,
+): Promise<void> {
+  const { request } = message;
+  if (message.kind === 'read')
+    send(child, {
+      kind: 'bytes',
+      request,
+      bytes: await options.read(message.fileId, message.offset, message.length),
+    });
+  else {
+    if (options.keep === undefined) throw new Error('this task keeps nothing');
+    await options.keep(message.dataHash, message.name, message.bytes);
+    send(child, { kind: 'kept', request });
+  }
+}
+
+function send(child: ChildProcess, message: ToReader): void {
+  // A child that has just ended takes no message; its 'close' tells the story.
+  if (child.connected) child.send(message, () => undefined);
+}
+
+/** Resident memory by the kernel's account; 0 where it cannot be told. */
+async function memoryOf(child: ChildProcess): Promise<number> {
+  try {
+    const pages = (await readFile(`/proc/${child.pid}/statm`, 'utf8')).split(' ')[1];
+    return Number(pages) * PAGE_BYTES;
+  } catch {
+    return 0;
+  }
+}
