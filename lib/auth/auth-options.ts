@@ -3,7 +3,7 @@ import Credentials from '@auth/core/providers/credentials';
 import type { AuthConfig } from '@auth/core';
 import { z } from 'zod';
 import { env } from '@/lib/env/env';
-import { AppError } from '@/lib/errors/app-error';
+import { type AppError } from '@/lib/errors/app-error';
 import { toAppError } from '@/lib/http/to-app-error';
 import { log } from '@/lib/log/log';
 import { authConfig } from './auth-config';

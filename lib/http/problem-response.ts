@@ -1,4 +1,4 @@
-import { AppError, errorCodes } from '@/lib/errors/app-error';
+import { type AppError, errorCodes } from '@/lib/errors/app-error';
 
 /** An error as problem+json (RFC 9457). Nothing of the cause goes outside. */
 export function problemResponse(error: AppError, requestId: string, headers: HeadersInit = {}): Response {

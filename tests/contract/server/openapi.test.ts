@@ -29,7 +29,7 @@ describe('/api/v1/openapi.json', () => {
   // The schema of OpenAPI 3.1 documents as published by the OpenAPI Initiative, carried by the validator package.
   it('is a valid OpenAPI 3.1 document', async () => {
     const validator = new Validator();
-    const result = await validator.validate(JSON.parse(text) as object);
+    const result = await validator.validate(JSON.parse(text) as Record<string, unknown>);
     expect(result.errors ?? []).toEqual([]);
     expect(result.valid).toBe(true);
     expect(validator.version).toBe('3.1');

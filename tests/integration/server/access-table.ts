@@ -2,7 +2,8 @@ import type { Things } from './things';
 
 /**
  * Who may call which route, written down a second time on purpose: l lead, a analyst, e experimenter, o observer;
- * `public` for anybody. Readouts and intakes are tried on a session without data: what they then say is not the matter here. `params`, `query` and `body` make a call that would succeed with the given lab's things.
+ * `public` for anybody. `params`, `query` and `body` make a call that would succeed with the given lab's things; an
+ * intake is tried with a file that has not arrived, because what it then says is not the matter here.
  */
 export interface AccessRow {
   roles: string;
@@ -15,7 +16,9 @@ export interface AccessRow {
 }
 
 const id = (name: keyof Things) => (things: Things) => ({ id: things[name] });
-const recipe = () => ({ recipe: { label: 'shared' } });
+const recipe = () => ({
+  recipe: { label: 'fraction', folds: { kind: 'stratified', k: 3 }, null: { kind: 'none' } },
+});
 const fileAsTable = ({ fileId }: Things) => ({
   counts: { fileId, path: 'counts', axes: ['trial', 'unit', 'bin'] },
   binWidthMs: 20,
@@ -86,11 +89,19 @@ export const accessTable: Record<string, AccessRow> = {
   },
   'POST /api/v1/files/{id}/complete': { roles: 'lae', params: id('fileId') },
   'POST /api/v1/sessions/{id}/intake': { roles: 'lae', params: id('emptySessionId'), body: fileAsTable },
-  'GET /api/v1/sessions/{id}/readouts': { roles: 'laeo', params: id('sessionId') },
-  'POST /api/v1/sessions/{id}/readouts': { roles: 'la', params: id('emptySessionId'), body: recipe },
-  'POST /api/v1/sessions/{id}/readouts/estimate': {
+  'GET /api/v1/sessions/{id}/intake/proposal': { roles: 'laeo', params: id('sessionId') },
+  'POST /api/v1/sessions/{id}/intake/preview': {
     roles: 'laeo',
     params: id('emptySessionId'),
+    body: (things) => ({ intake: fileAsTable(things) }),
+  },
+  'GET /api/v1/sessions/{id}/data/trials': { roles: 'laeo', params: id('sessionId') },
+  'GET /api/v1/sessions/{id}/data/units': { roles: 'laeo', params: id('sessionId') },
+  'GET /api/v1/sessions/{id}/readouts': { roles: 'laeo', params: id('sessionId') },
+  'POST /api/v1/sessions/{id}/readouts': { roles: 'la', params: id('sessionId'), body: recipe },
+  'POST /api/v1/sessions/{id}/readouts/estimate': {
+    roles: 'laeo',
+    params: id('sessionId'),
     body: recipe,
   },
   'GET /api/v1/readouts/{id}': { roles: 'laeo', params: id('readoutId') },

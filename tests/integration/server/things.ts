@@ -5,8 +5,11 @@ import { inTransaction } from '@/db/transaction';
 import { recipeSchema } from '@/lib/contracts/recipe';
 import { createFile } from '@/lib/services/files/create-file';
 import { createToken } from '@/lib/services/tokens/create-token';
+import { makeData, makeSession } from '@/tests/integration/readouts/made-session';
 import { insertSession, type LabRows } from '@/tests/support/rows';
-import { actorOf, giveData } from './support';
+import { actorOf } from './support';
+
+const data = makeData({ nTrials: 30, nUnits: 4, nBins: 3 });
 
 /** One thing of each kind in a lab; the token belongs to the member. */
 export interface Things {
@@ -21,9 +24,12 @@ export interface Things {
 
 /** Makes one of each, with `owner` as the author of the lab's things and `member` as the owner of the token. */
 export async function makeThings(owner: LabRows, member: LabRows = owner): Promise<Things> {
-  const { sessionId, studyId, animalId } = await insertSession(owner);
+  const { sessionId } = await makeSession(data, owner);
+  const session = await db()<{ id: string; study_id: string; animal_id: string }>('recording_sessions')
+    .where({ id: sessionId })
+    .first();
+  const { study_id: studyId, animal_id: animalId } = session!;
   const empty = await insertSession(owner, { studyId, animalId });
-  await giveData(owner, sessionId, { trials: 12, units: 4, bins: 3 });
   const ctx = { actor: actorOf({ ...owner, role: 'lead' }), requestId: v7() };
   const file = await createFile(ctx, { sessionId, name: 'counts.npy', sizeBytes: 10 });
   const token = await createToken(
@@ -47,12 +53,12 @@ async function insertQueuedReadout(owner: LabRows, sessionId: string): Promise<s
     .where({ session_id: sessionId })
     .first();
   const recipe = recipeSchema.parse({
-    label: 'shared',
+    label: 'fraction',
     labelTransform: { kind: 'none' },
     trials: { all: true },
     units: { all: true },
     exclusions: 'none',
-    window: { startMs: 0, endMs: 60 },
+    window: { startMs: 0, endMs: 150 },
     features: 'windowMean',
     transform: 'none',
     estimator: { kind: 'leastSquares' },
