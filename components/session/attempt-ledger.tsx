@@ -35,6 +35,19 @@ function wordClass(line: ReadoutSummary): string | undefined {
   return line.verdictKind === 'explained' ? 'w-warn' : undefined;
 }
 
+const verdictWords: Record<NonNullable<ReadoutSummary['verdictKind']>, string> = {
+  carries: 'carries it',
+  doesNot: 'does not carry it',
+  cannotTell: 'cannot tell',
+  explained: 'carried, but explained',
+  worse: 'worse than the mean',
+};
+
+/** The verdict in a few words; for what has none, how it stands. */
+function ending(line: ReadoutSummary): string {
+  return line.verdictKind === null ? line.statusLine : verdictWords[line.verdictKind];
+}
+
 /** Every readout ever tried on a session, on one common axis. Nothing can be removed from it. */
 export function AttemptLedger({
   sessionId,
@@ -173,7 +186,7 @@ export function AttemptLedger({
                   {line.p === null ? '' : formatP(line.p)}
                 </td>
                 <td role="cell" className={wordClass(line)} style={{ fontWeight: 400, lineHeight: 1.3 }}>
-                  {numbers(line.statusLine)}
+                  {numbers(ending(line))}
                 </td>
                 <td role="cell" className="quiet">
                   exploratory
@@ -224,7 +237,7 @@ export function AttemptLedger({
               line.nullInterval?.low ?? null,
               line.nullInterval?.high ?? null,
               line.p,
-              line.statusLine,
+              ending(line),
               line.dataVersion,
             ])
           }
