@@ -12,6 +12,8 @@ import { relayOutbox } from '@/lib/services/outbox/relay-outbox';
 import { computePool } from '@/worker/compute/compute-pool';
 import { readFile } from '@/worker/handlers/read-file';
 import { runIntake } from '@/worker/handlers/run-intake';
+import { readFile } from '@/worker/handlers/read-file';
+import { runIntake } from '@/worker/handlers/run-intake';
 import { runReadout } from '@/worker/handlers/run-readout';
 import { repeat } from '@/worker/repeat';
 import { workerSettings } from '@/worker/settings';

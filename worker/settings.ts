@@ -6,6 +6,8 @@ const ms = (fallback: number) => z.coerce.number().int().min(50).max(3_600_000).
 const settingsSchema = z.object({
   /** Readouts at once; each has a process with its own threads. */
   WORKER_READOUTS: z.coerce.number().int().min(1).max(64).default(2),
+  /** Files read, and intakes carried out, at once. */
+  WORKER_READERS: z.coerce.number().int().min(1).max(64).default(2),
   /** Threads of a readout. */
   WORKER_THREADS: z.coerce
     .number()
