@@ -12,8 +12,6 @@ import { relayOutbox } from '@/lib/services/outbox/relay-outbox';
 import { computePool } from '@/worker/compute/compute-pool';
 import { readFile } from '@/worker/handlers/read-file';
 import { runIntake } from '@/worker/handlers/run-intake';
-import { readFile } from '@/worker/handlers/read-file';
-import { runIntake } from '@/worker/handlers/run-intake';
 import { runReadout } from '@/worker/handlers/run-readout';
 import { repeat } from '@/worker/repeat';
 import { workerSettings } from '@/worker/settings';
@@ -32,8 +30,8 @@ const consumers: Consumer[] = [
     concurrency: settings.WORKER_READOUTS,
     stopping: stopping.signal,
   }),
-  consume('read-file', readFile, { concurrency: 2, stopping: stopping.signal }),
-  consume('run-intake', runIntake, { concurrency: 1, stopping: stopping.signal }),
+  consume('read-file', readFile, { concurrency: settings.WORKER_READERS, stopping: stopping.signal }),
+  consume('run-intake', runIntake, { concurrency: settings.WORKER_READERS, stopping: stopping.signal }),
 ];
 const loops = [
   repeat('relay the outbox', settings.WORKER_RELAY_MS, async () => void (await relayOutbox())),
