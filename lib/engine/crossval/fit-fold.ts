@@ -102,7 +102,8 @@ function factorFold(
     if (estimator.kind === 'leastSquares') candidates[0].penalty = null;
   }
   const { kept, mean, sd } = scaled;
-  return { fit: { factor, base, candidates, plsComponents, kept, mean, sd }, scaled };
+  const scaledTrain = setup.keepsScaled === true ? zTrain : undefined;
+  return { fit: { factor, base, candidates, plsComponents, scaledTrain, kept, mean, sd }, scaled };
 }
 
 /** Training rows scaled as the outer fold did, then centred on these training rows (explicit leave-one-out). */

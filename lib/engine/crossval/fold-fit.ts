@@ -11,6 +11,8 @@ export interface FactoredFold {
   candidates: Candidate[];
   /** Partial least squares makes its readouts from the label: most components; otherwise 0. */
   plsComponents: number;
+  /** nTrain × kept features as they were factorised; only where the setup asks for it. */
+  scaledTrain?: Float64Array;
   kept: Int32Array;
   mean: Float64Array;
   sd: Float64Array;

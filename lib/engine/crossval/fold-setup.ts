@@ -26,6 +26,8 @@ export interface FoldSetup {
   };
   /** Inner folds over `train`'s positions; needed for the choice by inner folds. */
   inner?: () => InnerAssignment;
+  /** Keep the scaled training features in the fit, for weights. */
+  keepsScaled?: boolean;
   /** Session trial of each row, for inner purge gaps. */
   trials: Int32Array;
 }

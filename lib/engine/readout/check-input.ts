@@ -1,4 +1,5 @@
 import { findBins } from '@/lib/engine/features/find-bins';
+import { slideWindows } from '@/lib/engine/features/slide-windows';
 import type { EngineProblem, EstimatorSpec, ReadoutInput, TimeWindow } from '@/lib/engine/readout/types';
 
 /**
@@ -44,6 +45,16 @@ export function checkInput(input: ReadoutInput): EngineProblem[] {
   for (const [name, window] of windows) {
     const range = findBins(window, input.windowStartMs, input.binWidthMs, nBins);
     if (!range.ok) stop('window-not-on-bins', range.message.replace('window', name), range.remedy);
+  }
+  for (const view of input.views) {
+    if (view.kind !== 'timeCourse' && view.kind !== 'temporalGeneralisation') continue;
+    const { widthMs, stepMs } = view;
+    if (slideWindows(widthMs, stepMs, input.windowStartMs, input.binWidthMs, nBins) !== null) continue;
+    stop(
+      'windows-not-on-bins',
+      `Windows of ${widthMs} ms every ${stepMs} ms cannot be made of ${nBins} bins of ${input.binWidthMs} ms.`,
+      `Use multiples of ${input.binWidthMs} ms.`,
+    );
   }
   checkEstimator(input.estimator, stop);
   checkNuisance(input, stop);

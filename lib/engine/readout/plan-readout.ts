@@ -1,31 +1,16 @@
 import { planDraws } from '@/lib/engine/controls/plan-draws';
-import { makeFoldSet } from '@/lib/engine/readout/make-fold-set';
-import { PlanBuilder } from '@/lib/engine/readout/plan-builder';
 import { checkInput } from '@/lib/engine/readout/check-input';
-import type {
-  DesignSpec,
-  EngineProblem,
-  FeatureSpec,
-  PlanResult,
-  ReadoutInput,
-  Task,
-} from '@/lib/engine/readout/types';
+import { makeFoldSet } from '@/lib/engine/readout/make-fold-set';
+import { mainDesign, mainFeatures } from '@/lib/engine/readout/main-task';
+import { PlanBuilder } from '@/lib/engine/readout/plan-builder';
+import { planControls } from '@/lib/engine/readout/plan-controls';
+import { planViews } from '@/lib/engine/readout/plan-views';
+import type { EngineProblem, PlanResult, ReadoutInput, Task } from '@/lib/engine/readout/types';
 
 /** Most folds for which the nested-cross-validation interval (K(K − 1)/2 more fits) is worked out. */
 const MOST_FOLDS_FOR_INTERVAL = 20;
 /** Sustained flops a second of one core with the native backend, for the estimate. */
 const FLOPS_A_SECOND = 2.5e10;
-
-/** The main readout's features. */
-export function mainFeatures(input: ReadoutInput): FeatureSpec {
-  return { kind: input.features, window: input.window, transform: input.transform, units: { all: true } };
-}
-
-/** What stands beside the main readout's features. */
-export function mainDesign(input: ReadoutInput): DesignSpec {
-  const isAdjusted = input.nuisance.handling === 'adjust' && input.nuisance.variables.length > 0;
-  return { kind: isAdjusted ? 'adjusted' : 'plain', nuisanceOf: -1 };
-}
 
 /**
  * Turns a readout into a plan: who is in which fold, which analyses are needed, and the chunks that carry them out, with
@@ -60,6 +45,8 @@ export function planReadout(input: ReadoutInput): PlanResult {
   builder.addTask(main);
   builder.addSplitChunks(0, 'Held-out predictions', 'Shuffled control');
   addPairs(builder);
+  planControls(input, builder, draws.nDraws);
+  planViews(input, builder, draws.nDraws);
 
   const p = builder.nFeatures(main);
   const n = trials.length;

@@ -2,8 +2,11 @@ import type { Linalg } from '@/lib/engine/linalg/port';
 import { fitSplit } from '@/lib/engine/readout/fit-split';
 import { runBatch } from '@/lib/engine/readout/run-batch';
 import { runDraws } from '@/lib/engine/readout/run-draws';
+import { runGeneralisation } from '@/lib/engine/readout/run-generalisation';
+import { runInjection } from '@/lib/engine/readout/run-injection';
 import { runObserved } from '@/lib/engine/readout/run-observed';
 import { runPair } from '@/lib/engine/readout/run-pair';
+import { runWeights } from '@/lib/engine/readout/run-weights';
 import { taskDraws, taskLabels } from '@/lib/engine/readout/task-data';
 import type { Chunk, ChunkCache, ChunkOutput, ReadoutInput, ReadoutPlan } from '@/lib/engine/readout/types';
 
@@ -48,7 +51,11 @@ function valuesOf(
       return runPair(input, plan, job, linalg, cache);
     case 'batch':
       return runBatch(input, plan, job, linalg, cache);
-    default:
-      throw new RangeError('unknown job');
+    case 'weights':
+      return runWeights(input, plan, job, linalg, cache);
+    case 'generalisation':
+      return runGeneralisation(input, plan, job, linalg, cache);
+    case 'injection':
+      return runInjection(input, plan, job, linalg, cache);
   }
 }
