@@ -84,13 +84,14 @@ async function start() {
   await runMigrations({ root, env });
   const { health } = await startProduct({ root, children, built, env, host, port });
   if (hasDemo) {
+    const waiting = setTimeout(() => say('Preparing the demonstration lab …'), 3_000);
     await runStep({
       what: 'The demonstration lab could not be set up',
       command: process.execPath,
       args: ['--import', 'tsx', 'scripts/demo/seed.ts'],
       root,
       env,
-    });
+    }).finally(() => clearTimeout(waiting));
   }
   const missing = await awayParts(health);
   say('');
