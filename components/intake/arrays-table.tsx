@@ -8,8 +8,18 @@ import type { IntakeDraft } from '@/lib/client/intake/intake-draft';
 import { listUses } from '@/lib/client/intake/list-uses';
 import type { StoredFile } from '@/lib/contracts/file';
 import { formatShape } from '@/lib/format/format-shape';
+import { formatValue } from '@/lib/format/format-value';
 
 const mostShown = 200;
+
+/** The first values, long fractions cut to four figures: enough to recognise an array by. */
+function sampleWords(sample: readonly string[] | undefined): string {
+  const short = (value: string) =>
+    value.length > 7 && value.trim() !== '' && Number.isFinite(Number(value))
+      ? formatValue(Number(value))
+      : value;
+  return (sample ?? []).slice(0, 6).map(short).join(' ');
+}
 
 /** The arrays that the files hold, and what each is taken for; any word of the last column can be changed. */
 export function ArraysTable({
@@ -61,7 +71,7 @@ export function ArraysTable({
                   <td className="quiet">{array.dtype}</td>
                   <td className="n">{formatShape(array.shape)}</td>
                   <td>
-                    <code className="quiet sample">{array.sample?.slice(0, 7).join(' ')}</code>
+                    <code className="quiet sample">{sampleWords(array.sample)}</code>
                   </td>
                   <td>
                     {options.length > 1 ? (

@@ -174,11 +174,12 @@ export function IntakeDesk({
             acts={
               <>
                 {session.state === 'ready' ? (
-                  <Link className="btn plain" href={`/sessions/${session.id}`}>
+                  <Link className="btn" href={`/sessions/${session.id}`}>
                     To the session
                   </Link>
                 ) : null}
                 <Button
+                  kind={session.state === 'ready' ? 'plain' : 'filled'}
                   why={state.why ?? (submit.isPending ? 'Being sent.' : null)}
                   showWhy={false}
                   onClick={() => {
@@ -196,9 +197,13 @@ export function IntakeDesk({
             }
           >
             <p>
-              {session.state === 'ready' && outcome.intake === null
-                ? numbers(`Data version ${session.dataVersion ?? 1} is ready.`)
-                : numbers(state.words)}
+              {numbers(
+                submit.isPending
+                  ? 'The mapping is being sent.'
+                  : session.state === 'ready'
+                    ? readyWords(session)
+                    : state.words,
+              )}
             </p>
             {warnings.length > 0 && stops === 0 && outcome.intake !== null ? (
               <label>
@@ -229,4 +234,13 @@ function useReadable(files: readonly StoredFile[]): readonly StoredFile[] {
   const [kept, setKept] = useState({ key: '', list: [] as readonly StoredFile[] });
   if (kept.key !== key) setKept({ key, list: files.filter((file) => file.state === 'readable') });
   return kept.list;
+}
+
+function readyWords(session: Session): string {
+  const size = [
+    formatPlural(session.trials ?? 0, 'trial'),
+    formatPlural(session.units ?? 0, 'unit'),
+    formatPlural(session.bins ?? 0, 'bin'),
+  ].join(', ');
+  return `Data version ${session.dataVersion ?? 1} is ready: ${size}. Other files or another mapping would become a new version.`;
 }

@@ -76,9 +76,9 @@ export function MappingSentence({
           {labels.length === 1 ? 'the label is ' : 'the labels are '}
           {labels.map(({ name, use }, index) => (
             <span key={name}>
-              {index > 0 ? ', ' : ''}
+              {index === 0 ? '' : index === labels.length - 1 ? ' and ' : ', '}
               <b>{name}</b>
-              {use.kind === 'label' && use.labelKind !== 'other' ? `, ${use.labelKind}` : ''}
+              {use.kind === 'label' && use.labelKind !== 'other' ? ` (${use.labelKind})` : ''}
             </span>
           ))}
           .

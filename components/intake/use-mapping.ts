@@ -77,8 +77,11 @@ function withUse(draft: IntakeDraft, changed: Record<string, ArrayUse>, key: str
   return uses;
 }
 
+const inTheSentence = new Set(['binWidthMs', 'windowStartMs']);
+
+/** What the service asks and the page does not already: the sentence of the mapping has its own fields for bins. */
 function openQuestions(proposal: IntakeProposal | undefined): IntakeProposal['questions'] {
-  return proposal?.questions ?? [];
+  return (proposal?.questions ?? []).filter((question) => !inTheSentence.has(question.field));
 }
 
 /** A value once it has stopped changing for half a second. */
