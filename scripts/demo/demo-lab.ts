@@ -65,7 +65,7 @@ export const demoSessions: DemoSession[] = [
         { name: 'MT', nUnits: 96 },
         { name: 'MST', nUnits: 46 },
       ],
-      carriers: 0.22,
+      carriers: 0.32,
       design: 'signal',
       driftSd: 0.35,
     },

@@ -63,8 +63,10 @@ export function makeRecording(plan: RecordingPlan): MadeRecording {
       let noise = 0;
       for (let f = 0; f < nFactors; f++) noise += factors[f] * loading[u][f];
       const drift = unit.driftSlope * progress + 0.1 * Math.sin(2 * Math.PI * progress + unit.driftPhase);
-      const follows = 1 + unit.labelGain * (stimulus.realised[source] - 0.5);
-      const gain = sharedGain * Math.exp(noise + drift) * follows * (0.6 + 0.4 * stimulus.contrast[trial]);
+      // Only the response to the scene can follow what the scene shows: the bins before onset carry none of it.
+      const sceneGain =
+        (0.6 + 0.4 * stimulus.contrast[trial]) * (1 + unit.labelGain * (stimulus.realised[source] - 0.5));
+      const gain = sharedGain * Math.exp(noise + drift);
       const trialDispersion = draws.gamma(unit.dispersion, 1 / unit.dispersion);
       for (let bin = 0; bin < nBins; bin++) {
         const sceneTimeMs = windowStartMs + bin * binMs - latencyMs;
@@ -73,7 +75,7 @@ export function makeRecording(plan: RecordingPlan): MadeRecording {
           const drive = stimulus.drive(source, Math.floor(sceneTimeMs / binMs), unit);
           const onset =
             1 - Math.exp(-(sceneTimeMs + 10) / 60) + 0.8 * Math.exp(-(((sceneTimeMs - 80) / 30) ** 2));
-          rateHz += unit.peakHz * drive * onset;
+          rateHz += unit.peakHz * drive * onset * sceneGain;
         } else if (sceneTimeMs >= sceneMs) {
           rateHz += 0.35 * unit.baseHz * Math.exp(-(sceneTimeMs - sceneMs) / 120);
         }
