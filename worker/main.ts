@@ -7,6 +7,7 @@ import { closeQueues } from '@/lib/jobs/queues';
 import { within } from '@/lib/jobs/within';
 import { announceWorker, withdrawWorker } from '@/lib/jobs/worker-presence';
 import { log } from '@/lib/log/log';
+import { forgetSent } from '@/lib/services/outbox/forget-sent';
 import { reconcileWork } from '@/lib/services/outbox/reconcile-work';
 import { relayOutbox } from '@/lib/services/outbox/relay-outbox';
 import { computePool } from '@/worker/compute/compute-pool';
@@ -38,6 +39,7 @@ const loops = [
   repeat('look for lost work', settings.WORKER_RECONCILE_MS, () =>
     reconcileWork({ staleMs: settings.WORKER_STALE_MS, waitingMs: settings.WORKER_WAITING_MS }),
   ),
+  repeat('forget what was sent long ago', 600_000, forgetSent),
   repeat('say that the worker is alive', 4_000, () => announceWorker(workerId)),
 ];
 log.info(

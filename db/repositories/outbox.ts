@@ -80,9 +80,16 @@ export async function postponeOutbox(q: Knex, ids: number[]): Promise<void> {
 
 /** Forgets entries that were sent more than a day ago. */
 export async function purgeOutbox(q: Knex): Promise<void> {
-  await q('outbox')
-    .whereNotNull('sent_at')
-    .andWhere('sent_at', '<', q.raw('timestampadd(day, -1, current_timestamp(3))'))
-    .limit(1_000)
-    .delete();
+  // By primary key: a deleting scan would lock gaps that new entries go into.
+  const old: { id: number }[] = await q('outbox')
+    .select('id')
+    .where('sent_at', '<', q.raw('timestampadd(day, -1, current_timestamp(3))'))
+    .limit(1_000);
+  if (old.length > 0)
+    await q('outbox')
+      .whereIn(
+        'id',
+        old.map(({ id }) => id),
+      )
+      .delete();
 }

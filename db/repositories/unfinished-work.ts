@@ -43,12 +43,16 @@ export async function releaseStaleWork(
 ): Promise<WorkRef[]> {
   const { table, waiting, claims } = tables[kind];
   if (!claims) return [];
-  const rows = await trx(table)
-    .select('id', 'attempts')
-    .where({ state: 'running' })
-    .andWhere('heartbeat_at', '<', ago(trx, staleMs))
-    .orderBy('id')
-    .limit(limit)
+  const isStale = (query: Knex.QueryBuilder) =>
+    query.where({ state: 'running' }).andWhere('heartbeat_at', '<', ago(trx, staleMs));
+  // First without locks, then by primary key: a locking scan would hold up everybody who renews a claim.
+  const found: { id: string }[] = await isStale(trx(table).select('id')).orderBy('id').limit(limit);
+  if (found.length === 0) return [];
+  const rows: { id: string; attempts: number }[] = await isStale(trx(table).select('id', 'attempts'))
+    .whereIn(
+      'id',
+      found.map(({ id }) => id),
+    )
     .forUpdate()
     .skipLocked();
   const ids = rows.map((row) => row.id);

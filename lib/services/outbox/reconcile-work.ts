@@ -1,5 +1,5 @@
 import { db } from '@/db/connection';
-import { addToOutbox, purgeOutbox } from '@/db/repositories/outbox';
+import { addToOutbox } from '@/db/repositories/outbox';
 import { listWaitingWork, releaseStaleWork } from '@/db/repositories/unfinished-work';
 import { inTransaction } from '@/db/transaction';
 import { jobKinds } from '@/lib/jobs/definitions';
@@ -36,5 +36,4 @@ export async function reconcileWork({ staleMs, waitingMs }: ReconcileLimits): Pr
       await enqueue(kind, payload);
     }
   }
-  await purgeOutbox(db());
 }
