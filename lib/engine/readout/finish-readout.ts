@@ -1,5 +1,7 @@
 import { perLevel } from '@/lib/engine/measures/per-level';
 import { CollectedOutputs, type RepeatPredictions } from '@/lib/engine/readout/collected-outputs';
+import { finishControls } from '@/lib/engine/readout/finish-controls';
+import { finishViews } from '@/lib/engine/readout/finish-views';
 import { heldOutNumbers } from '@/lib/engine/readout/held-out-numbers';
 import { nestedInterval } from '@/lib/engine/readout/nested-interval';
 import { nullNumbers } from '@/lib/engine/readout/null-numbers';
@@ -36,14 +38,15 @@ export function finishReadout(
     y,
     (_, i) => repeats.reduce((sum, r) => sum + r.predicted[i], 0) / repeats.length,
   );
+  const control = nullNumbers(input.nullScheme.kind, heldOut.r2, collected.nullR2(0), plan.logArrangements);
   return {
     heldOut,
     perFold,
     perLevel: perLevel(y, mean),
     penalty: perFold.map(({ penalty }) => penalty),
-    null: nullNumbers(input.nullScheme.kind, heldOut.r2, collected.nullR2(0), plan.logArrangements),
-    controls: [],
-    views: [],
+    null: control,
+    controls: finishControls(input, plan, collected, heldOut.r2, control?.p ?? null),
+    views: finishViews(input, plan, collected),
     warnings: [...plan.warnings, ...foldWarnings(perFold)],
     nFeatures: new PlanBuilder(input).nFeatures(plan.tasks[0]),
     trialsUsed: plan.foldSets[0].trials,
