@@ -13,7 +13,9 @@ export default defineConfig({
       test: {
         name,
         include: [`tests/${name}/**/*.test.{ts,tsx}`],
-        ...(name === 'integration' || name === 'contract' ? { fileParallelism: false, hookTimeout: 60_000, testTimeout: 60_000 } : {}),
+        ...(name === 'integration' || name === 'contract'
+          ? { fileParallelism: false, hookTimeout: 60_000, testTimeout: 60_000 }
+          : {}),
       },
     })),
   },

@@ -5,6 +5,9 @@ import { log } from '@/lib/log/log';
 import { MariaClient } from '@/db/maria-client';
 import { connectionOptions } from '@/db/connection-options';
 
+/** The pool or an open transaction: for signatures outside db/ (which do not import knex). */
+export type Database = Knex;
+
 interface Pool {
   key: string;
   knex: Knex;

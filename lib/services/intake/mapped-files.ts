@@ -1,11 +1,11 @@
-import type { Knex } from 'knex';
+import type { Database } from '@/db/connection';
 import { findSessionFiles, type FileRow } from '@/db/repositories/files';
 import type { Intake } from '@/lib/contracts/intake';
 import { AppError, type FieldFault } from '@/lib/errors/app-error';
 
 /** The files that a mapping reads from: all must belong to the session and be readable. */
 export async function mappedFiles(
-  q: Knex,
+  q: Database,
   labId: string,
   sessionId: string,
   intake: Intake,
