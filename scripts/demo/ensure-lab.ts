@@ -2,7 +2,7 @@ import { v7 } from 'uuid';
 import { db } from '@/db/connection';
 import { insertLab } from '@/db/repositories/labs';
 import { insertMembership, listMemberships } from '@/db/repositories/memberships';
-import { changePasswordHash, findUserByEmail, insertUser } from '@/db/repositories/users';
+import { setPasswordHash, findUserByEmail, insertUser } from '@/db/repositories/users';
 import { inTransaction } from '@/db/transaction';
 import { hashPassword } from '@/lib/auth/hash-password';
 import { verifyPassword } from '@/lib/auth/verify-password';
@@ -42,7 +42,7 @@ export async function ensureLab(plan: LabPlan, password: string): Promise<Record
     const user = await findUserByEmail(db(), member.email);
     if (user === null) throw new Error(`${member.email} has an account missing from a lab that is there`);
     if (!(await verifyPassword(password, user.password_hash)))
-      await changePasswordHash(db(), user.id, await hashPassword(password));
+      await setPasswordHash(db(), user.id, await hashPassword(password));
     const [membership] = await listMemberships(db(), user.id);
     contexts[member.role] = {
       requestId: 'demo-seed',
