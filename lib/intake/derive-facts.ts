@@ -4,6 +4,8 @@ import type { SessionData } from '@/lib/intake/session-data';
 export interface DerivedFacts {
   /** Spikes in each trial, all units and bins. */
   trialTotals: Float64Array;
+  /** Spikes in each bin, all trials and units. */
+  binTotals: Float64Array;
   /** Spikes per second of each unit. */
   meanRateHz: Float64Array;
   /** Share of trials in which the unit spikes at least once, 0 … 1. */
@@ -18,6 +20,7 @@ export function deriveFacts(
 ): DerivedFacts {
   const { counts, nTrials, nUnits, nBins, binWidthMs } = data;
   const trialTotals = new Float64Array(nTrials);
+  const binTotals = new Float64Array(nBins);
   const sums = new Float64Array(nUnits);
   const squares = new Float64Array(nUnits);
   const present = new Float64Array(nUnits);
@@ -25,7 +28,11 @@ export function deriveFacts(
   for (let trial = 0; trial < nTrials; trial++)
     for (let unit = 0; unit < nUnits; unit++) {
       let total = 0;
-      for (let bin = 0; bin < nBins; bin++) total += counts[cell++];
+      for (let bin = 0; bin < nBins; bin++) {
+        const count = counts[cell++];
+        total += count;
+        binTotals[bin] += count;
+      }
       trialTotals[trial] += total;
       sums[unit] += total;
       squares[unit] += total * total;
@@ -34,6 +41,7 @@ export function deriveFacts(
   const seconds = (nTrials * nBins * binWidthMs) / 1000;
   return {
     trialTotals,
+    binTotals,
     meanRateHz: sums.map((sum) => sum / seconds),
     presence: present.map((n) => n / nTrials),
     // Counts are whole numbers, so the sums are exact and the difference loses nothing that matters.

@@ -43,6 +43,8 @@ export interface SheetTables {
   block: SheetColumn | null;
   /** Mean rate over the units of each trial, spikes/s. */
   rateHz: (number | null)[];
+  /** Mean rate over trials and units of each bin, spikes/s. */
+  populationRateHz: number[];
   units: UnitRow[];
 }
 
@@ -63,6 +65,10 @@ export async function readTables(session: Session, exclusions: ExclusionList): P
     unitColumns,
     block: findBlockColumn(trialColumns),
     rateHz: Array.from(derived.trialTotals, (total) => finite(total / seconds / (session.units ?? 1))),
+    populationRateHz: Array.from(
+      derived.binTotals,
+      (total) => total / ((session.trials ?? 1) * (session.units ?? 1) * ((session.binWidthMs ?? 1) / 1000)),
+    ),
     units: Array.from(derived.meanRateHz, (rateHz, unit) => {
       const left = out.get(unit);
       return {

@@ -76,7 +76,7 @@ export default async function NewReadoutPage({ params, searchParams }: PageProps
     exclusionsVersion: exclusions.version,
     blockColumn: tables.block?.name ?? null,
     rateHz: tables.rateHz,
-    populationRateHz: null,
+    populationRateHz: (session.bins ?? 0) > 1 ? tables.populationRateHz : null,
   };
   const proposal = proposeForm(facts, randomInt(1, 2 ** 31));
   const repeated = typeof from === 'string' ? await readReadout(from) : null;
