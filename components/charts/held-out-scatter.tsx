@@ -5,10 +5,11 @@ import 'uplot/dist/uPlot.min.css';
 import { axisTicks } from '@/components/charts/axis-ticks';
 import { chartNumber } from '@/components/charts/chart-number';
 import styles from '@/components/charts/held-out-scatter.module.css';
+import { levelTicks } from '@/components/charts/level-ticks';
 import { jitter } from '@/components/charts/jitter';
 import { PlotCursor } from '@/components/charts/plot-cursor';
 import {
-  dotColour,
+  paintDots,
   paintScatter,
   type ScatterDrawing,
   type ScatterLevel,
@@ -49,6 +50,7 @@ export function HeldOutScatter({
   const ring = useRef<HTMLDivElement>(null);
   const store = useTrialCursorStore();
   const at = useTrialCursor((state) => state.at);
+  const range = useTrialCursor((state) => state.range);
   const placeOf = useMemo(() => new Map(trials.map((entry, index) => [entry.trial, index])), [trials]);
 
   const drawn = useMemo(() => {
@@ -64,7 +66,11 @@ export function HeldOutScatter({
     const xs = trials.map((entry) => entry.label + jitter(entry.trial) * spread * 0.5);
     const order = xs.map((_, index) => index).sort((a, b) => xs[a] - xs[b]);
     const yTicks = axisTicks(Math.min(xLow, ...values), Math.max(xHigh, ...values), 6);
-    const xTicks = axisTicks(xLow, xHigh, Math.max(2, Math.min(5, Math.floor(width / 90))));
+    const few = levels.length > 1 && levels.length <= 6 && width / levels.length > 55;
+    const xTicks =
+      hasLevels && few
+        ? levelTicks(levels.map((entry) => entry.level))
+        : axisTicks(xLow, xHigh, Math.max(2, Math.min(5, Math.floor(width / 90))));
     const pad = Math.max(spread * 0.34, (xHigh - xLow || 1) * 0.04);
     const drawing: ScatterDrawing = {
       xTicks,
@@ -99,24 +105,11 @@ export function HeldOutScatter({
     mark.style.transform = `translate(${left}px, ${top}px)`;
   }, [at, placeOf, drawn, trials]);
 
+  const latest = useRef({ range, placeRing });
+
   useEffect(() => {
     const element = target.current;
     if (!element) return;
-    const dots = (u: uPlot): void => {
-      const { colour, opacity } = dotColour(u.root);
-      const { ctx } = u;
-      const size = 3.2 * devicePixelRatio;
-      ctx.save();
-      ctx.globalAlpha = Math.min(1, opacity);
-      ctx.fillStyle = colour;
-      const [xs, ys] = u.data as [number[], number[]];
-      for (let k = 0; k < xs.length; k += 1) {
-        ctx.beginPath();
-        ctx.arc(u.valToPos(xs[k], 'x', true), u.valToPos(ys[k], 'y', true), size / 2, 0, 2 * Math.PI);
-        ctx.fill();
-      }
-      ctx.restore();
-    };
     const u = new uPlot(
       {
         width,
@@ -131,8 +124,11 @@ export function HeldOutScatter({
         hooks: {
           draw: [
             (self) => {
-              dots(self);
+              const chosen = latest.current.range;
+              paintDots(self, trials, drawn.xs, chosen);
               paintScatter(self, drawn.drawing);
+              // Scales are only known once uPlot has drawn.
+              latest.current.placeRing();
             },
           ],
         },
@@ -149,9 +145,13 @@ export function HeldOutScatter({
       u.destroy();
       plot.current = null;
     };
-  }, [drawn, width]);
+  }, [drawn, trials, width]);
 
-  useEffect(placeRing, [placeRing, width]);
+  useEffect(() => {
+    latest.current = { range, placeRing };
+    placeRing();
+  }, [range, placeRing]);
+  useEffect(() => plot.current?.redraw(false), [range]);
   useThemeChange(() => plot.current?.redraw(false));
 
   const place = at === null ? -1 : (placeOf.get(at) ?? -1);

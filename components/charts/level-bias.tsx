@@ -5,6 +5,7 @@ import { BottomAxis } from '@/components/charts/bottom-axis';
 import { chartNumber } from '@/components/charts/chart-number';
 import styles from '@/components/charts/figure.module.css';
 import { LeftAxis } from '@/components/charts/left-axis';
+import { levelTicks } from '@/components/charts/level-ticks';
 import { linearScale } from '@/components/charts/linear-scale';
 import { PlotCursor } from '@/components/charts/plot-cursor';
 import { useWidth } from '@/components/charts/use-width';
@@ -38,7 +39,10 @@ export function LevelBias({
   const yTicks = axisTicks(Math.min(0, ...edges), Math.max(0, ...edges), 5);
   const first = levels[0]?.level ?? 0;
   const last = levels[levels.length - 1]?.level ?? 1;
-  const xTicks = axisTicks(first, last, Math.max(2, Math.min(5, Math.floor(width / 90))), false);
+  const xTicks =
+    levels.length > 1 && levels.length <= 6 && width / levels.length > 55
+      ? levelTicks(levels.map((entry) => entry.level))
+      : axisTicks(first, last, Math.max(2, Math.min(5, Math.floor(width / 90))), false);
   const pad = (last - first || 1) * 0.06;
   const x = linearScale(
     Math.min(first - pad, xTicks.values[0]),

@@ -25,10 +25,38 @@ function variable(style: CSSStyleDeclaration, name: string): string {
   return style.getPropertyValue(name).trim();
 }
 
-/** Opacity and colours of the single-trial dots, read from the page so that both themes are right. */
-export function dotColour(root: Element): { colour: string; opacity: number } {
-  const style = getComputedStyle(root);
-  return { colour: variable(style, '--verdigris'), opacity: 0.42 * (Number(variable(style, '--dot')) || 1) };
+/** Draws the single trials; those of the chosen range in ink, so that they stand out without a colour alone. */
+export function paintDots(
+  plot: uPlot,
+  trials: readonly { trial: number; predicted: number }[],
+  xs: readonly number[],
+  chosen: readonly [number, number] | null,
+): void {
+  const { ctx } = plot;
+  const style = getComputedStyle(plot.root);
+  const opacity = Math.min(1, 0.42 * (Number(variable(style, '--dot')) || 1));
+  const ratio = devicePixelRatio;
+  const draw = (isChosen: boolean): void => {
+    ctx.fillStyle = variable(style, isChosen ? '--ink' : '--verdigris');
+    ctx.globalAlpha = isChosen ? 1 : opacity;
+    const radius = (isChosen ? 2.2 : 1.6) * ratio;
+    trials.forEach(({ trial, predicted }, index) => {
+      if (isChosen !== (chosen !== null && trial >= chosen[0] && trial <= chosen[1])) return;
+      ctx.beginPath();
+      ctx.arc(
+        plot.valToPos(xs[index], 'x', true),
+        plot.valToPos(predicted, 'y', true),
+        radius,
+        0,
+        2 * Math.PI,
+      );
+      ctx.fill();
+    });
+  };
+  ctx.save();
+  draw(false);
+  if (chosen) draw(true);
+  ctx.restore();
 }
 
 /** Draws what stands around the dots: range-frame axes, identity line, guess, means with ±1 SD brackets. */

@@ -19,7 +19,7 @@ export function FoldsTable({ result }: { result: ReadoutResult }) {
       className="scroll"
       tabIndex={0}
       role="region"
-      aria-label="Folds"
+      aria-label="Table of folds"
       style={{ maxHeight: 420, overflow: 'auto' }}
     >
       <table>

@@ -6,7 +6,7 @@ import type { Recipe } from '@/lib/contracts/recipe';
 /** Every fitted step and the rows it saw. */
 export function LeakReport({ recipe, result }: { recipe: Recipe; result: ReadoutResult }) {
   return (
-    <div className="scroll" tabIndex={0} role="region" aria-label="Leak report">
+    <div className="scroll" tabIndex={0} role="region" aria-label="Table of fitted steps">
       <table style={{ minWidth: 560 }}>
         <caption className="vh">Leak report</caption>
         <thead>

@@ -13,7 +13,7 @@ export function LevelsTable({ result }: { result: ReadoutResult }) {
       className="scroll"
       tabIndex={0}
       role="region"
-      aria-label="Levels of the label"
+      aria-label="Table of levels"
       style={{ maxHeight: 420, overflow: 'auto' }}
     >
       <table>

@@ -31,7 +31,7 @@ export function NullFigure({
       : ` ${formatP(control.smallestP)} is the smallest that ${formatCount(control.draws)} draws allow.`;
   const caption =
     `Held-out R² of the readout and of ${formatCount(control.draws)} label shuffles ${scheme}, folds fixed${chosen ? ', the choice of penalty repeated each time' : ''}. ` +
-    `${formatCount(control.exceedances)} reached it: p = ${formatP(control.p)}, one-sided.${least} ` +
+    `${control.exceedances === 0 ? 'None' : formatCount(control.exceedances)} reached it: p = ${formatP(control.p)}, one-sided.${least} ` +
     `Line at the observed value: 95 % interval by nested cross-validation; it covers readouts fitted like these, not another session or animal.`;
   return (
     <Figure

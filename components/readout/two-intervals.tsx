@@ -21,38 +21,38 @@ export function TwoIntervals({ result }: { result: ReadoutResult }) {
   if (rows.length === 0) return null;
   const axis = sharedAxis(rows.map((row) => ({ value: heldOut.r2, interval: row.interval })));
   return (
-    <div className="scroll" tabIndex={0} role="region" aria-label="Two intervals of R²">
-      <table style={{ minWidth: 460 }}>
+    <div className="scroll" tabIndex={0} role="region" aria-label="Table of the two intervals">
+      <table style={{ minWidth: 640 }}>
         <caption className="vh">Two intervals of the held-out R²</caption>
         <thead>
           <tr>
             <th scope="col">Interval</th>
-            <th scope="col" style={{ width: 194 }}>
-              <IntervalAxis axis={axis} width={180} />
+            <th scope="col" style={{ width: 264 }}>
+              <IntervalAxis axis={axis} width={250} />
             </th>
             <th scope="col" className="num">
-              R²
+              R²<span className="u">95 %</span>
             </th>
+            <th scope="col">What it covers</th>
           </tr>
         </thead>
         <tbody>
           {rows.map((row) => (
             <tr key={row.name}>
-              <td style={{ paddingBlock: 6, lineHeight: 1.35 }}>
-                <b>{row.name}</b>
-                <br />
-                <span className="say">{numbers(row.covers)}</span>
-              </td>
+              <td>{row.name}</td>
               <td className="iv">
                 <IntervalGlyph
                   value={heldOut.r2}
                   interval={row.interval}
                   mark={markOfVerdict(verdict.kind)}
                   axis={axis}
-                  width={180}
+                  width={250}
                 />
               </td>
               <td className="n">{formatInterval(row.interval)}</td>
+              <td className="say" style={{ paddingBlock: 6, lineHeight: 1.35 }}>
+                {numbers(row.covers)}
+              </td>
             </tr>
           ))}
         </tbody>

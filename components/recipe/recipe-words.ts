@@ -1,6 +1,7 @@
 import { conditionWords } from '@/components/recipe/condition-words';
 import { estimatorWords } from '@/components/recipe/estimator-words';
 import { foldsWords } from '@/components/recipe/folds-words';
+import { labelWords } from '@/components/recipe/label-words';
 import { nullWords } from '@/components/recipe/null-words';
 import { penaltyWords } from '@/components/recipe/penalty-words';
 import { unitsWords } from '@/components/recipe/units-words';
@@ -17,7 +18,7 @@ export interface RecipeCounts {
 
 const transforms = { none: '', sqrt: 'square-root ' } as const;
 
-function labelWords(recipe: Recipe, kind: LabelFact['kind'] | undefined): string {
+function theLabel(recipe: Recipe, kind: LabelFact['kind'] | undefined): string {
   const kindWord = kind === 'nominal' || kind === 'realised' ? `${kind} ` : '';
   const { labelTransform } = recipe;
   const after =
@@ -26,7 +27,7 @@ function labelWords(recipe: Recipe, kind: LabelFact['kind'] | undefined): string
       : labelTransform.kind === 'logit'
         ? `, as its logit after moving it ${labelTransform.epsilon ?? 0.001} inwards,`
         : '';
-  return `The ${kindWord}${recipe.label}${after}`;
+  return `The ${kindWord}${labelWords(recipe.label)}${after}`;
 }
 
 function trialsWords(recipe: Recipe, used: number | null): string {
@@ -63,7 +64,7 @@ export function recipeWords(recipe: Recipe, counts: RecipeCounts, kind?: LabelFa
       ? ' No shuffled control was run.'
       : ` The same pipeline was repeated for ${formatPlural(scheme.draws ?? 0, 'shuffle')} of the label ${nullWords(scheme)}, folds fixed${penalty.startsWith('chosen') ? ', choice included' : ''}.`;
   return (
-    `${labelWords(recipe, kind)} was read out from ${units} over ${trialsWords(recipe, counts.trialsUsed)} by ` +
+    `${theLabel(recipe, kind)} was read out from ${units} over ${trialsWords(recipe, counts.trialsUsed)} by ` +
     `${estimatorWords(recipe.estimator.kind)} on ${rates} ${formatNumber(startMs, 0)} to ${formatNumber(endMs, 0)} ms ` +
     `from the alignment event, z-scored with the mean and 1/n standard deviation of the training trials.` +
     nuisanceWords(recipe) +

@@ -117,7 +117,7 @@ export function AttemptLedger({
         />
         . Nothing can be removed from this list.
       </p>
-      <div className="scroll" tabIndex={0} role="region" aria-label="Attempt ledger">
+      <div className="scroll" tabIndex={0} role="region" aria-label="Table of attempts">
         <table className="stack ledger" role="table">
           <caption className="vh">Attempt ledger</caption>
           <thead role="rowgroup">

@@ -4,6 +4,7 @@ import { axisTicks } from '@/components/charts/axis-ticks';
 import { BottomAxis } from '@/components/charts/bottom-axis';
 import figureStyles from '@/components/charts/figure.module.css';
 import { LeftAxis } from '@/components/charts/left-axis';
+import { levelTicks } from '@/components/charts/level-ticks';
 import { linearScale } from '@/components/charts/linear-scale';
 import { PlotCursor } from '@/components/charts/plot-cursor';
 import { useWidth } from '@/components/charts/use-width';
@@ -25,7 +26,10 @@ export function LabelHistogram({
   const { bars, isLevels } = useMemo(() => labelBars(values), [values]);
   const low = bars[0]?.from ?? 0;
   const high = bars[bars.length - 1]?.to ?? 1;
-  const xTicks = axisTicks(low, high, Math.max(2, Math.min(6, Math.floor(width / 70))));
+  const xTicks =
+    isLevels && bars.length > 1 && bars.length <= 6 && width / bars.length > 50
+      ? levelTicks(bars.map((bar) => bar.from))
+      : axisTicks(low, high, Math.max(2, Math.min(6, Math.floor(width / 70))));
   const most = Math.max(1, ...bars.map((bar) => bar.count));
   const yTicks = axisTicks(0, most, 4);
   const pad = isLevels ? (high - low || 1) * 0.06 : 0;

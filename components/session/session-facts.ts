@@ -1,3 +1,4 @@
+import { labelWords } from '@/components/recipe/label-words';
 import type { UnitRow } from '@/components/session/unit-row';
 import type { ExclusionList, Session } from '@/lib/contracts/session';
 import { formatCount } from '@/lib/format/format-count';
@@ -36,14 +37,11 @@ export function sessionFacts(
     { term: 'trials', value: trials === null ? '' : of(trials, outTrials) },
     { term: 'units', value: of(nUnits, outUnits) },
     { term: 'bins', value: span },
-    { term: 'labels', value: session.labels.map((label) => label.column).join(', ') },
+    { term: 'labels', value: session.labels.map((label) => labelWords(label.column)).join(', ') },
     {
       term: 'data',
       value:
-        session.dataVersion === null
-          ? ''
-          : `version ${session.dataVersion}, ${session.dataHash?.slice(0, 8) ?? ''}…`,
+        session.dataVersion === null ? '' : `v${session.dataVersion} ${session.dataHash?.slice(0, 8) ?? ''}…`,
     },
-    { term: 'state', value: session.state },
   ];
 }

@@ -62,7 +62,7 @@ export function UnitTable({
         className={`scroll ${styles.view}`}
         tabIndex={0}
         role="region"
-        aria-label="Units"
+        aria-label="Table of units"
         onScroll={seen.onScroll}
         style={{ maxHeight: viewPx + 40 }}
       >

@@ -15,6 +15,7 @@ import { readoutPicture } from '@/components/readout/readout-picture';
 import { ReadoutRecord } from '@/components/readout/readout-record';
 import { TwoIntervals } from '@/components/readout/two-intervals';
 import { VerdictLine } from '@/components/readout/verdict-line';
+import { labelWords } from '@/components/recipe/label-words';
 import { nullWords } from '@/components/recipe/null-words';
 import { penaltyWords } from '@/components/recipe/penalty-words';
 import { excludedWithReasons } from '@/components/session/excluded-with-reasons';
@@ -123,23 +124,28 @@ export async function ReadoutSheet({
           <HeldOutFigure
             trials={picture.trials}
             levels={levels}
-            label={recipe.label}
+            label={labelWords(recipe.label)}
             caption={caption}
             guess={meanLabel}
             fileName={fileName}
           />
-          {result.null ? (
-            <NullFigure
-              result={result}
-              scheme={nullWords(recipe.null)}
-              chosen={penaltyWords(recipe.estimator).startsWith('chosen')}
-              fileName={fileName}
-            />
-          ) : (
-            <p className="lead">
-              No shuffled control was run, so this page cannot say how far the readout lies from chance.
-            </p>
-          )}
+          <div>
+            {result.null ? (
+              <NullFigure
+                result={result}
+                scheme={nullWords(recipe.null)}
+                chosen={penaltyWords(recipe.estimator).startsWith('chosen')}
+                fileName={fileName}
+              />
+            ) : (
+              <p className="lead">
+                No shuffled control was run, so this page cannot say how far the readout lies from chance.
+              </p>
+            )}
+            <div style={{ marginTop: 24 }}>
+              <FoldsTable result={result} />
+            </div>
+          </div>
         </div>
       </Section>
       <Section
@@ -147,15 +153,12 @@ export async function ReadoutSheet({
         id="intervals"
         why="What the same recipe would have given with other trials of this session."
       >
-        <div className="figs" style={{ gridTemplateColumns: 'minmax(0, 1fr) minmax(0, 1fr)' }}>
-          <TwoIntervals result={result} />
-          <FoldsTable result={result} />
-        </div>
+        <TwoIntervals result={result} />
       </Section>
       {result.perLevel.length > 1 && (
         <Section title="How true" id="levels" why="Is it biased at the ends of the scale?">
           <div className="figs" style={{ gridTemplateColumns: 'minmax(0, 1fr) minmax(0, 1fr)' }}>
-            <LevelsFigure result={result} label={recipe.label} fileName={fileName} />
+            <LevelsFigure result={result} label={labelWords(recipe.label)} fileName={fileName} />
             <LevelsTable result={result} />
           </div>
         </Section>

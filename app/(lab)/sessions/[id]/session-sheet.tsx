@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
 import { readTables } from '@/app/(lab)/sessions/[id]/read-session';
 import { TrialCursorProvider } from '@/components/charts/trial-cursor';
+import { labelWords } from '@/components/recipe/label-words';
 import { excludedWithReasons } from '@/components/session/excluded-with-reasons';
 import { ExclusionEntries } from '@/components/session/exclusion-entries';
 import { LabelFigures } from '@/components/session/label-figures';
@@ -80,7 +81,7 @@ export async function SessionSheet({
       {label && labelValues && (
         <Section title="Label" id="label" why="Is there something to read out, and does it drift?">
           <LabelFigures
-            label={label}
+            label={labelWords(label)}
             values={labelValues}
             rateHz={tables.rateHz}
             excluded={exclusions.excludedTrials}
