@@ -13,7 +13,7 @@ const pollMs = 10_000;
 /** A comment line this often keeps proxies from closing a quiet stream. */
 const heartbeatMs = 15_000;
 /** The browser comes back by itself; until then its rights may have changed, so that no stream lasts for ever. */
-const lastsMs = 30 * 60_000;
+const lastsMs = 5 * 60_000;
 
 /**
  * A session's live events as text/event-stream: the present states first, then every change. It ends when the request
