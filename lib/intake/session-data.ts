@@ -5,6 +5,14 @@ import type { CountsArray } from '@/lib/intake/counts-array';
 export interface LabelChoice {
   column: string;
   kind: 'nominal' | 'realised' | 'other';
+  /** How it was worked out, where it was; kept with the column. */
+  made?: {
+    from: 'stimulus' | 'strengths';
+    centring?: 'location' | 'axis' | 'none';
+    isClipped?: boolean;
+    /** Σσ²_shared / Σ(σ²_shared + σ²_own) over all trials. */
+    pooled?: number | null;
+  };
 }
 
 /** Velocities in deg/s, row-major over trials × locations × axes × frames. */

@@ -62,12 +62,14 @@ export async function writeCanonicalTo(
     );
     await add(`counts-${part}`, bytes, layout);
   }
-  const labelKinds = new Map(data.labels.map((label) => [label.column, label.kind]));
+  const labels = new Map(data.labels.map((label) => [label.column, label]));
   await add(
     'trials',
     writeColumns(data.trials, nTrials, new Map([['outfold.part', 'trials'], ...shared]), (column) => {
-      const kind = labelKinds.get(column.name);
-      return kind === undefined ? [] : [['outfold.label', kind]];
+      const label = labels.get(column.name);
+      if (label === undefined) return [];
+      const made: [string, string][] = label.made ? [['outfold.labelMade', JSON.stringify(label.made)]] : [];
+      return [['outfold.label', label.kind], ...made];
     }),
   );
   await add('units', writeColumns(data.units, nUnits, new Map([['outfold.part', 'units'], ...shared])));

@@ -14,6 +14,10 @@ const NOTABLE = 0.2;
  */
 export function checkConfounds(data: SessionData): Problem[] {
   const labels = new Set(data.labels.map((label) => label.column));
+  // The interval of a label that was worked out here runs with it by construction.
+  const intervals = new Set(
+    data.labels.flatMap(({ column, made }) => (made ? [`${column}_low`, `${column}_high`] : [])),
+  );
   const { trialTotals } = summarise(data);
   const order = Float64Array.from({ length: data.nTrials }, (_, trial) => trial);
   const company: { name: string; path?: string; parts: Float64Array[] }[] = [
@@ -21,7 +25,7 @@ export function checkConfounds(data: SessionData): Problem[] {
     { name: 'the trial’s total count', parts: [trialTotals] },
   ];
   for (const column of data.trials) {
-    if (column.type === 'category' || labels.has(column.name)) continue;
+    if (column.type === 'category' || labels.has(column.name) || intervals.has(column.name)) continue;
     const turn = (2 * Math.PI) / (column.type === 'circular' ? (column.periodDeg ?? 360) : 360);
     company.push({
       name: `“${column.name}”`,

@@ -1,14 +1,41 @@
 import type { Problem } from '@/lib/contracts/problem';
+import { correlation } from '@/lib/intake/checks/correlation';
 import type { LabelChoice, SessionData } from '@/lib/intake/session-data';
 
 const FEW_TRIALS = 20;
 
 /** Labels that cannot be read out, or that look like a slip: constant, infinite, missing, outside 0 to 1, in percent, unbalanced. */
 export function checkLabels(data: SessionData): Problem[] {
-  return data.labels.flatMap((label) => {
+  const problems = data.labels.flatMap((label) => {
     const column = data.trials.find((one) => one.name === label.column);
     return column === undefined || column.type === 'category' ? [] : checkLabel(label, column.values);
   });
+  return [...problems, ...ceilingOf(data)];
+}
+
+/** How much of the nominal label the realised one can tell at most, where a session brings one of each. */
+function ceilingOf(data: SessionData): Problem[] {
+  const valuesOf = (kind: LabelChoice['kind']): { name: string; values: Float64Array } | null => {
+    const labels = data.labels.filter((label) => label.kind === kind);
+    const column = labels.length === 1 ? data.trials.find((one) => one.name === labels[0].column) : undefined;
+    return column === undefined || column.type === 'category'
+      ? null
+      : { name: column.name, values: column.values };
+  };
+  const nominal = valuesOf('nominal');
+  const realised = valuesOf('realised');
+  if (nominal === null || realised === null) return [];
+  const { r, n } = correlation(nominal.values, realised.values);
+  if (Number.isNaN(r)) return [];
+  return [
+    {
+      code: 'stimulus-ceiling',
+      severity: 'notes',
+      message: `The realised label “${realised.name}” shares ${(100 * r * r).toFixed(0)} % of the variance of the nominal label “${nominal.name}” over ${n} trials (r² = ${(r * r).toFixed(3)}).`,
+      remedy: 'A readout that follows the realised label cannot reach more of the nominal one than this.',
+      place: { path: realised.name },
+    },
+  ];
 }
 
 function checkLabel(label: LabelChoice, values: Float64Array): Problem[] {

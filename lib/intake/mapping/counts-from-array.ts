@@ -1,6 +1,7 @@
 import type { CountsAxis } from '@/lib/contracts/intake';
 import { IntakeRefusal } from '@/lib/intake/intake-refusal';
 import { CountsBuilder } from '@/lib/intake/mapping/counts-builder';
+import { scatterCells } from '@/lib/intake/mapping/scatter-cells';
 import type { ReadableArray } from '@/lib/intake/readers/readable-file';
 
 /**
@@ -41,26 +42,10 @@ export async function countsFromArray(
   const [nTrials, nUnits, nBins] = [lengthOf('trial'), lengthOf('unit'), lengthOf('bin')];
   const builder = new CountsBuilder([nTrials, nUnits, nBins], place);
   const strideOf = { trial: nUnits * nBins, unit: nBins, bin: 1 };
-  // Axes from the fastest in the file to the slowest.
-  const order = array.order === 'C' ? [...axes.keys()].reverse() : [...axes.keys()];
-  const lengths = order.map((axis) => shape[axis]);
-  const strides = order.map((axis) => strideOf[axes[axis]]);
-  const at = new Array<number>(order.length).fill(0);
-  let cell = 0;
-  for await (const chunk of array.chunks()) {
-    for (let i = 0; i < chunk.length; i++) {
-      builder.set(cell, Number(chunk[i]));
-      cell += strides[0];
-      if (++at[0] < lengths[0]) continue;
-      for (let axis = 0; axis < order.length && at[axis] === lengths[axis]; axis++) {
-        cell -= strides[axis] * lengths[axis];
-        at[axis] = 0;
-        if (axis + 1 < order.length) {
-          at[axis + 1] += 1;
-          cell += strides[axis + 1];
-        }
-      }
-    }
-  }
+  await scatterCells(
+    array,
+    axes.map((axis) => strideOf[axis]),
+    (cell, value) => builder.set(cell, value),
+  );
   return builder;
 }

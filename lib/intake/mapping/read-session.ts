@@ -6,6 +6,7 @@ import { buildLabels } from '@/lib/intake/mapping/build-labels';
 import { compareLengths } from '@/lib/intake/mapping/compare-lengths';
 import { readCounts } from '@/lib/intake/mapping/read-counts';
 import { readTable } from '@/lib/intake/mapping/read-table';
+import { readStimulus } from '@/lib/intake/mapping/read-stimulus';
 import type { SourceFiles } from '@/lib/intake/mapping/source-files';
 import type { SessionData } from '@/lib/intake/session-data';
 
@@ -20,7 +21,11 @@ export async function readSession(
   try {
     const tableTrials = await readTable(files, intake.trials, 'trial');
     const units = intake.units === undefined ? [] : await readTable(files, intake.units, 'unit');
-    const { trials, labels } = buildLabels(intake.labels, tableTrials);
+    const stimulus =
+      intake.stimulus === undefined
+        ? undefined
+        : await readStimulus(files, intake.stimulus, tableTrials[0].values.length);
+    const { trials, labels, remarks } = buildLabels(intake.labels, tableTrials, stimulus);
     const { builder, fileName, arrayType } = await readCounts(files, intake.counts, {
       trials: tableTrials,
       units,
@@ -44,8 +49,10 @@ export async function readSession(
       trials,
       units,
       labels,
+      ...(stimulus === undefined ? {} : { stimulus }),
     };
-    const problems = checkSession(data, { arrayType, longWithoutShape: isLongWithoutShape(intake) });
+    const found = checkSession(data, { arrayType, longWithoutShape: isLongWithoutShape(intake) });
+    const problems = [...found, ...remarks];
     const isStopped = problems.some((problem) => problem.severity === 'stops');
     return { data: isStopped ? null : data, read: data, problems };
   } catch (error) {

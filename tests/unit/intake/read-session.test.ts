@@ -2,10 +2,12 @@ import { describe, expect, it } from 'vitest';
 import type { Intake } from '@/lib/contracts/intake';
 import { hashCounts } from '@/lib/intake/canonical/hash-counts';
 import { writeCanonical } from '@/lib/intake/canonical/write-canonical';
+import { correlation } from '@/lib/intake/checks/correlation';
 import { readSession } from '@/lib/intake/mapping/read-session';
 import type { SourceFile } from '@/lib/intake/mapping/source-files';
 import { memorySource } from '@/lib/intake/memory-source';
 import { openFile } from '@/lib/intake/readers/open-file';
+import { makeNpy } from './make-npy';
 import { fixture } from './support';
 
 const ids = {
@@ -102,5 +104,102 @@ describe('one session in three formats', () => {
       [13, 4, 2],
     ])
       expect(turned.counts[(j * 8 + k) * 40 + i]).toBe(two.counts[(i * 12 + j) * 8 + k]);
+  });
+
+  it('works a label out from the velocities, and keeps how', async () => {
+    const files = await open({ [ids.npz]: fixture('sessions/small.npz') });
+    const { data, problems } = await readSession(files, {
+      ...rest,
+      counts: { fileId: ids.npz, path: 'counts', axes: ['trial', 'unit', 'bin'] },
+      trials: {
+        fileId: ids.npz,
+        columns: { shared_fraction: 'shared_fraction', generated: 'realised_fraction' },
+      },
+      labels: [
+        { column: 'shared_fraction', kind: 'nominal' },
+        { name: 'realised', fromStimulus: { centring: 'location', clip: false } },
+      ],
+      stimulus: {
+        velocity: { fileId: ids.npz, path: 'velocity', axes: ['trial', 'location', 'axis', 'frame'] },
+        frameMs: 25,
+      },
+    });
+    expect(data!.stimulus).toMatchObject({ nLocations: 5, nAxes: 2, nFrames: 12, frameMs: 25 });
+    expect(data!.trials.map((column) => column.name)).toEqual([
+      'shared_fraction',
+      'generated',
+      'realised',
+      'realised_low',
+      'realised_high',
+    ]);
+    expect(data!.labels[1]).toMatchObject({
+      kind: 'realised',
+      made: { centring: 'location', isClipped: false },
+    });
+    // The generator's own realised fraction, from the processes before they were mixed, is the outside measure.
+    const values = (name: string) =>
+      data!.trials.find((column) => column.name === name)!.values as Float64Array;
+    expect(correlation(values('realised'), values('generated')).r).toBeGreaterThan(0.9);
+    expect(problems.map((problem) => problem.code)).toEqual(
+      expect.arrayContaining(['label-made', 'stimulus-ceiling']),
+    );
+    const { parts } = await writeCanonical(data!);
+    expect(parts.map((part) => part.name)).toEqual(['counts-0', 'trials', 'units', 'stimulus']);
+  });
+
+  it.each<[string, Partial<Intake>, string]>([
+    [
+      'no stimulus named',
+      { labels: [{ name: 'x', fromStimulus: { centring: 'axis', clip: true } }] },
+      'label-stimulus',
+    ],
+    [
+      'axes in another order',
+      {
+        stimulus: {
+          velocity: { fileId: ids.npz, path: 'velocity', axes: ['location', 'trial', 'axis', 'frame'] },
+          frameMs: 25,
+        },
+      },
+      'stimulus-trials',
+    ],
+    [
+      'an array with other axes',
+      {
+        stimulus: {
+          velocity: { fileId: ids.npz, path: 'counts', axes: ['trial', 'location', 'axis', 'frame'] },
+          frameMs: 25,
+        },
+      },
+      'stimulus-axes',
+    ],
+    [
+      'one location',
+      {
+        stimulus: {
+          velocity: { fileId: ids.long, path: '', axes: ['trial', 'location', 'axis', 'frame'] },
+          frameMs: 25,
+        },
+        labels: [{ name: 'x', fromStimulus: { centring: 'axis', clip: true } }],
+      },
+      'label-not-estimable',
+    ],
+    [
+      'strengths that are missing',
+      { labels: [{ name: 'x', fromStrengths: { shared: 'shared_fraction', own: 'nowhere' } }] },
+      'label-not-found',
+    ],
+  ])('refuses a label from a stimulus where it cannot be: %s', async (_, change, code) => {
+    const files = await open({
+      [ids.npz]: fixture('sessions/small.npz'),
+      [ids.long]: makeNpy({ descr: "'<f4'", shape: '(240, 1, 2, 3)', data: new Uint8Array(240 * 6 * 4) }),
+    });
+    const { problems } = await readSession(files, {
+      ...rest,
+      counts: { fileId: ids.npz, path: 'counts', axes: ['trial', 'unit', 'bin'] },
+      trials: { fileId: ids.npz, columns: { shared_fraction: 'shared_fraction' } },
+      ...change,
+    });
+    expect(problems).toMatchObject([{ code, severity: 'stops' }]);
   });
 });
