@@ -3,7 +3,7 @@ import type { Centring } from '@/lib/engine/label/centring';
 import { realisedFractions, type RealisedFractions } from '@/lib/engine/label/realised-fractions';
 import { randomSource } from '@/lib/engine/random/random-source';
 import { splitGenerator } from '@/lib/engine/random/split-generator';
-import { simulateOuMotion } from '@/tests/support/ou-motion';
+import { ouMotion } from '@/scripts/calibration/ou-motion';
 
 // Source: simulation from the definition itself. Ornstein–Uhlenbeck motion sampled exactly (Gillespie 1996), whose
 // shared share of variance is known; 5 locations, 2 axes, 12 frames of 25 ms, τ 0.1 s, 2,000 trials.
@@ -16,7 +16,7 @@ function simulate(fraction: number, driftSd: number, centring: Centring): Realis
   const velocity = new Float64Array(nTrials * size);
   for (let i = 0; i < nTrials; i += 1) {
     const motion = { fraction, ...shape, frameS: 0.025, tauS: 0.1, driftSd };
-    velocity.set(simulateOuMotion(random, motion), i * size);
+    velocity.set(ouMotion(random, motion), i * size);
   }
   return realisedFractions(velocity, nTrials, shape, { centring });
 }

@@ -16,7 +16,7 @@ export interface OuMotion {
  * One trial's velocities (location × axis × frame): √f·shared + √(1 − f)·own, each a stationary unit-variance
  * Ornstein–Uhlenbeck process sampled exactly (Gillespie, Phys. Rev. E 1996), plus a common constant drift.
  */
-export function simulateOuMotion(random: RandomSource, motion: OuMotion): Float64Array {
+export function ouMotion(random: RandomSource, motion: OuMotion): Float64Array {
   const { fraction, nLocations, nAxes, nFrames, frameS, tauS, driftSd } = motion;
   const phi = Math.exp(-frameS / tauS);
   const innovation = Math.sqrt(1 - phi * phi);
