@@ -4,9 +4,11 @@ import { writeCanonicalTo } from '@/lib/intake/canonical/write-canonical-to';
 import { columnFacts } from '@/lib/intake/column-facts';
 import { inspectFile } from '@/lib/intake/inspect-file';
 import { IntakeRefusal } from '@/lib/intake/intake-refusal';
+import { findArray } from '@/lib/intake/mapping/find-array';
 import { readSession } from '@/lib/intake/mapping/read-session';
 import type { SourceFile } from '@/lib/intake/mapping/source-files';
 import { previewSession } from '@/lib/intake/preview-session';
+import { readMatrix } from '@/lib/intake/read-matrix';
 import type { IntakeOutcome, ReaderAnswer, ReaderFile, ReaderTask } from '@/lib/intake/reader-messages';
 import { openFile } from '@/lib/intake/readers/open-file';
 
@@ -25,6 +27,7 @@ export async function carryOutTask(task: ReaderTask, host: ReaderHost): Promise<
       inspection: await inspectFile(bufferedSource(host.sourceOf(file)), file.name),
     };
   }
+  if (task.kind === 'matrix') return takeMatrix(task, host);
   const files = new Map<string, SourceFile>();
   try {
     for (const file of task.files) {
@@ -49,6 +52,25 @@ export async function carryOutTask(task: ReaderTask, host: ReaderHost): Promise<
     return { kind: 'taken', outcome: await takeIn(files, task, host) };
   } finally {
     for (const { file } of files.values()) file.close();
+  }
+}
+
+async function takeMatrix(
+  task: Extract<ReaderTask, { kind: 'matrix' }>,
+  host: ReaderHost,
+): Promise<ReaderAnswer> {
+  const { fileId, name } = task.file;
+  try {
+    const file = await openFile(bufferedSource(host.sourceOf(task.file)));
+    try {
+      const { array } = findArray(new Map([[fileId, { name, file }]]), fileId, task.path, 'the permutations');
+      return { kind: 'matrix', matrix: await readMatrix(array, name, task.maxEntries), problems: [] };
+    } finally {
+      file.close();
+    }
+  } catch (error) {
+    if (!(error instanceof IntakeRefusal)) throw error;
+    return { kind: 'matrix', matrix: null, problems: [error.toProblem({ file: name })] };
   }
 }
 

@@ -3,6 +3,7 @@ import type { IntakePreview } from '@/lib/contracts/intake-answer';
 import type { Problem } from '@/lib/contracts/problem';
 import type { ColumnFact, LabelFact } from '@/lib/contracts/session';
 import type { Inspection } from '@/lib/intake/inspect-file';
+import type { IndexMatrix } from '@/lib/intake/read-matrix';
 import type { PartRecord } from '@/lib/intake/canonical/part-record';
 
 /** A file that a reader process may ask bytes of; it never learns where the file is stored. */
@@ -16,7 +17,8 @@ export interface ReaderFile {
 export type ReaderTask =
   | { kind: 'inspect'; file: ReaderFile }
   | { kind: 'intake'; files: ReaderFile[]; intake: Intake }
-  | { kind: 'preview'; files: ReaderFile[]; intake: Intake; nTrials: number };
+  | { kind: 'preview'; files: ReaderFile[]; intake: Intake; nTrials: number }
+  | { kind: 'matrix'; file: ReaderFile; path: string; maxEntries: number };
 
 /** What came of an intake: stops (`made` null), or the canonical form's facts. */
 export interface IntakeOutcome {
@@ -37,7 +39,8 @@ export interface IntakeOutcome {
 export type ReaderAnswer =
   | { kind: 'inspected'; inspection: Inspection }
   | { kind: 'taken'; outcome: IntakeOutcome }
-  | { kind: 'previewed'; preview: IntakePreview };
+  | { kind: 'previewed'; preview: IntakePreview }
+  | { kind: 'matrix'; matrix: IndexMatrix | null; problems: Problem[] };
 
 /** From the reader to its parent: bytes wanted, an object to keep, the end. */
 export type FromReader =

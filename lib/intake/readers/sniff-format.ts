@@ -1,26 +1,23 @@
 import type { ByteSource } from '@/lib/intake/byte-source';
 import { IntakeRefusal } from '@/lib/intake/intake-refusal';
 
-export type ReadableFormat = 'npy' | 'npz' | 'csv';
+export type ReadableFormat = 'npy' | 'npz' | 'csv' | 'mat5';
+
+const FORMATS = 'Send NPY, NPZ, CSV, TSV or MAT (version 6 or 7).';
 
 /** Formats that are recognised in order to say clearly that they are not read. */
 const foreign: { name: string; matches: (head: Buffer) => boolean; remedy: string }[] = [
   {
     name: 'an HDF5 file (also MAT 7.3 and NWB)',
     matches: (head) => head.subarray(0, 8).equals(Buffer.from('894844460d0a1a0a', 'hex')),
-    remedy: 'Send NPY, NPZ, CSV or TSV.',
-  },
-  {
-    name: 'a MATLAB file',
-    matches: (head) => head.subarray(0, 10).toString('latin1') === 'MATLAB 5.0',
-    remedy: 'Send NPY, NPZ, CSV or TSV.',
+    remedy: FORMATS,
   },
   {
     name: 'an Arrow or Parquet file',
     matches: (head) =>
       ['ARROW1', 'FEA1'].some((magic) => head.toString('latin1').startsWith(magic)) ||
       head.subarray(0, 4).toString('latin1') === 'PAR1',
-    remedy: 'Send NPY, NPZ, CSV or TSV.',
+    remedy: FORMATS,
   },
   {
     name: 'a gzip archive',
@@ -56,6 +53,7 @@ export async function sniffFormat(source: ByteSource): Promise<ReadableFormat> {
     head[0] === 0x93
   )
     return 'npy';
+  if (head.subarray(0, 10).toString('latin1') === 'MATLAB 5.0') return 'mat5';
   if (head[0] === 0x50 && head[1] === 0x4b && (head[2] === 3 || head[2] === 5)) {
     if (head.includes('[Content_Types].xml'))
       throw new IntakeRefusal('format-unknown', 'This is an Excel workbook.', 'Export the sheet as CSV.');
@@ -64,11 +62,7 @@ export async function sniffFormat(source: ByteSource): Promise<ReadableFormat> {
   const other = foreign.find((format) => format.matches(head));
   if (other) throw new IntakeRefusal('format-unknown', `This is ${other.name}.`, other.remedy);
   if (isBinary(head))
-    throw new IntakeRefusal(
-      'format-unknown',
-      'The file is none of the formats that are read.',
-      'Send NPY, NPZ, CSV or TSV.',
-    );
+    throw new IntakeRefusal('format-unknown', 'The file is none of the formats that are read.', FORMATS);
   return 'csv';
 }
 

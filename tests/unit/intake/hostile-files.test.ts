@@ -100,7 +100,7 @@ const npy: Case[] = [
   [
     'text beyond Unicode',
     () => makeNpy({ descr: "'<U1'", shape: '(1,)', data: hex('ffffffff') }),
-    'npy-text',
+    'text-encoding',
     {},
   ],
 ];

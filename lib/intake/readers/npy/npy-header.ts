@@ -1,12 +1,7 @@
-import type { Dtype } from '@/lib/intake/readers/readable-file';
+import type { ElementType } from '@/lib/intake/readers/element-type';
 
 /** What the header of an NPY array says, checked. */
-export interface NpyHeader {
-  dtype: Dtype;
-  itemBytes: number;
-  littleEndian: boolean;
-  /** Only for dtype string: code points (`U`) or bytes (`S`). */
-  text?: 'U' | 'S';
+export interface NpyHeader extends ElementType {
   order: 'C' | 'F';
   shape: number[];
   nValues: number;

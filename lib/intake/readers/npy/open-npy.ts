@@ -1,5 +1,5 @@
 import type { ByteSource } from '@/lib/intake/byte-source';
-import { decodeValues } from '@/lib/intake/readers/npy/decode-values';
+import { decodeValues } from '@/lib/intake/readers/decode-values';
 import { npyHeaderProbeBytes, parseNpyHeader } from '@/lib/intake/readers/npy/parse-npy-header';
 import type { ReadableFile } from '@/lib/intake/readers/readable-file';
 import { streamBytes } from '@/lib/intake/readers/stream-bytes';

@@ -2,7 +2,7 @@ import { fromRandomAccessReader, type Entry, type ZipFile } from 'yauzl';
 import type { ByteSource } from '@/lib/intake/byte-source';
 import type { Problem } from '@/lib/contracts/problem';
 import { IntakeRefusal } from '@/lib/intake/intake-refusal';
-import { decodeValues } from '@/lib/intake/readers/npy/decode-values';
+import { decodeValues } from '@/lib/intake/readers/decode-values';
 import { npyHeaderProbeBytes, parseNpyHeader } from '@/lib/intake/readers/npy/parse-npy-header';
 import { ByteSourceReader } from '@/lib/intake/readers/npz/byte-source-reader';
 import { inflateEntry } from '@/lib/intake/readers/npz/inflate-entry';

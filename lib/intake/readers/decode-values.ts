@@ -1,8 +1,6 @@
-import type { NpyHeader } from '@/lib/intake/readers/npy/npy-header';
+import type { ElementType } from '@/lib/intake/readers/element-type';
 import type { NumberChunk, ValueChunk } from '@/lib/intake/readers/readable-file';
 import { IntakeRefusal } from '@/lib/intake/intake-refusal';
-
-type ElementType = Pick<NpyHeader, 'dtype' | 'itemBytes' | 'littleEndian' | 'text'>;
 
 /** Turns a stream of bytes into chunks of values; a value that is split between two slabs is put together. */
 export async function* decodeValues(
@@ -41,7 +39,7 @@ function swapBytes(bytes: Uint8Array, itemBytes: number): void {
   else buffer.swap64();
 }
 
-function viewNumbers(bytes: Uint8Array, dtype: Exclude<NpyHeader['dtype'], 'string'>): NumberChunk {
+function viewNumbers(bytes: Uint8Array, dtype: Exclude<ElementType['dtype'], 'string'>): NumberChunk {
   const at = bytes.byteOffset;
   const size = bytes.byteLength;
   const buffer = bytes.buffer;
@@ -100,7 +98,7 @@ function decodeText(bytes: Uint8Array, type: ElementType, path: string): string[
         if (point === 0) break;
         if (point > 0x10ffff || (point >= 0xd800 && point <= 0xdfff))
           throw new IntakeRefusal(
-            'npy-text',
+            'text-encoding',
             `A text value holds ${point}, which is no Unicode character.`,
             'Export the array again.',
             path === '' ? {} : { path },
