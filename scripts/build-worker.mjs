@@ -17,7 +17,7 @@ const entries = {
 const outdir = resolve(root, process.env.OUTFOLD_WORKER_DIST || 'dist/worker');
 
 rmSync(outdir, { recursive: true, force: true });
-await build({
+const { metafile } = await build({
   absWorkingDir: root,
   entryPoints: Object.fromEntries(
     Object.entries(entries).filter(([, path]) => existsSync(resolve(root, path))),
@@ -31,4 +31,12 @@ await build({
   packages: 'external',
   sourcemap: 'linked',
   logLevel: 'warning',
+  metafile: true,
 });
+
+// A file of ours that is not there would be taken for a package, and missed only when the worker starts.
+const missing = Object.values(metafile.outputs)
+  .flatMap(({ imports }) => imports)
+  .filter(({ path }) => path.startsWith('@/'));
+if (missing.length > 0)
+  throw new Error(`The worker imports what is not there: ${missing.map(({ path }) => path).join(', ')}`);

@@ -171,7 +171,7 @@ export class Children {
       return;
     }
     console.error(
-      `${failure.message}; starting it again (${record.deaths.length} of ${maxRestarts} in a minute)`,
+      `${failure.message}; starting it again (${record.deaths.length} of ${maxRestarts} in a minute); see ${join(this.#dataDir, 'logs', `${spec.name}.log`)}`,
     );
     await pause(250 * 2 ** (record.deaths.length - 1));
     if (this.#stopping || record.expected || record.process) return;
