@@ -2,7 +2,7 @@
  * Bundles the worker and the entries of its child processes and threads into OUTFOLD_WORKER_DIST (dist/worker if not
  * set), each a file of its own name. Packages stay outside.
  */
-import { existsSync, rmSync } from 'node:fs';
+import { rmSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { resolve } from 'node:path';
 import { build } from 'esbuild';
@@ -19,9 +19,7 @@ const outdir = resolve(root, process.env.OUTFOLD_WORKER_DIST || 'dist/worker');
 rmSync(outdir, { recursive: true, force: true });
 const { metafile } = await build({
   absWorkingDir: root,
-  entryPoints: Object.fromEntries(
-    Object.entries(entries).filter(([, path]) => existsSync(resolve(root, path))),
-  ),
+  entryPoints: entries,
   outdir,
   outExtension: { '.js': '.mjs' },
   bundle: true,
