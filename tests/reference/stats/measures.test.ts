@@ -18,6 +18,8 @@ import { rmse } from '@/lib/engine/measures/rmse';
 import { smallestP } from '@/lib/engine/measures/smallest-p';
 import { spearman } from '@/lib/engine/measures/spearman';
 import { variance } from '@/lib/engine/measures/variance';
+import { randomSource } from '@/lib/engine/random/random-source';
+import { splitGenerator } from '@/lib/engine/random/split-generator';
 import { check, norris } from '@/tests/reference/stats/checks';
 
 // Every published number here is read from tests/fixtures/checks/checks.json, which names its source and what verified it.
@@ -214,6 +216,34 @@ describe('BCa limits', () => {
     expect(limits.biasCorrection).toBeCloseTo(0, 12);
     expect(limits.low).toBeCloseTo(0.05, 10);
     expect(limits.high).toBeCloseTo(0.95, 10);
+  });
+  it('of a variance: spatial test data A (Efron & Tibshirani, An Introduction to the Bootstrap, 1993, table 14.1; from memory)', () => {
+    // Published: variance 171.5, â = .061, ẑ₀ = .146, 90 % limits 115.8 and 259.6 from 2,000 bootstrap samples.
+    const a = [
+      48, 36, 20, 29, 42, 42, 20, 42, 22, 41, 45, 14, 6, 0, 33, 28, 34, 4, 32, 24, 47, 41, 24, 26, 30, 41,
+    ];
+    const observed = variance(a, 0) ?? NaN;
+    expect(observed).toBeCloseTo(171.5, 1);
+    const without = jackknife(26, observed, (i) =>
+      variance(
+        a.filter((_, j) => j !== i),
+        0,
+      ),
+    );
+    expect(without?.acceleration).toBeCloseTo(0.061, 3);
+    const random = randomSource(splitGenerator(1, 'spatial test'));
+    const replicates = Array.from(
+      { length: 4000 },
+      () =>
+        variance(
+          a.map(() => a[random.integer(26)]),
+          0,
+        ) ?? NaN,
+    );
+    const limits = bcaLimits(observed, replicates, without?.acceleration ?? NaN, 0.9);
+    expect(Math.abs(limits.biasCorrection - 0.146)).toBeLessThan(0.07);
+    expect(Math.abs(limits.low - 115.8)).toBeLessThan(6);
+    expect(Math.abs(limits.high - 259.6)).toBeLessThan(12);
   });
   it("follow Efron's formula (1987, eq. 2.3) with bias and acceleration, worked by hand", () => {
     // Replicates uniform on 0…1, so that the quantile at α is α. z₀ = Φ⁻¹(.6) = .2533471, a = .1, 90 %:

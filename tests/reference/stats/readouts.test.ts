@@ -1,5 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { portableLinalg } from '@/lib/engine/linalg/portable';
+import { planReadout } from '@/lib/engine/readout/plan-readout';
+import { runChunk } from '@/lib/engine/readout/run-chunk';
 import { runReadout } from '@/lib/engine/readout/run-readout';
 import type { EstimatorSpec, ReadoutInput, ReadoutNumbers } from '@/lib/engine/readout/types';
 import { check, checkTable } from '@/tests/reference/stats/checks';
@@ -107,6 +109,75 @@ describe('leave-one-out least squares', () => {
     );
     expect((16 * (heldOut.rmse ?? NaN) ** 2) / expected.PRESS).toBeCloseTo(1, 8);
     expect(heldOut.r2).toBeCloseTo(expected.Q2_train_mean, 9);
+  });
+});
+
+describe('attitude, what the units add to a nuisance (Anderson-Sprecher 1994, within folds; numpy)', () => {
+  const table = checkTable('attitude.csv');
+  const [x, y] = [table.map((row) => row.slice(1)), table.map((row) => row[0])];
+  const blocks = y.map((_, i) => Math.floor(i / 6));
+  const { expected } = check<object, { partial_R2: number; R2tm_nuisance: number; R2tm_full: number }>(
+    'partial-r2',
+  );
+  const columns = [
+    { name: 'learning', term: 'linear' as const, values: Float64Array.from(table, (row) => row[3]) },
+  ];
+  it('incremental R² of all six predictors over learning, and R² of learning alone', () => {
+    // The nuisance is among the units too: least squares of both together is that of the units.
+    const controls: ReadoutInput['controls'] = [
+      { kind: 'incremental', columns },
+      { kind: 'nuisanceOnly', columns },
+    ];
+    const numbers = run(sessionOf(x, y, blocks, leastSquares, { controls }));
+    expect(numbers.heldOut.r2).toBeCloseTo(expected.R2tm_full, 9);
+    expect(numbers.controls[0].heldOut?.r2).toBeCloseTo(expected.partial_R2, 9);
+    expect(numbers.controls[1].heldOut?.r2).toBeCloseTo(expected.R2tm_nuisance, 9);
+  });
+});
+
+/** Weights and patterns of fold 0's readout, from the engine's chunk for them. */
+function weightsOfFirstFold(input: ReadoutInput): { weights: Float64Array; pattern: Float64Array } {
+  const planned = planReadout({ ...input, views: [{ kind: 'weights' }] });
+  if (!planned.ok) throw new Error('the plan was refused');
+  const chunk = planned.plan.chunks.find(({ job }) => job.kind === 'weights' && job.split === 0);
+  if (!chunk) throw new Error('there is no chunk for the weights');
+  const cache = { get: () => undefined, set: () => undefined };
+  const { values } = runChunk(input, planned.plan, chunk, portableLinalg, cache);
+  return { weights: values.weights as Float64Array, pattern: values.pattern as Float64Array };
+}
+
+describe('weights and patterns (Haufe et al., NeuroImage 2014)', () => {
+  it('the two-channel example: x₁ = s + d, x₂ = d gives w = (1, −1) and pattern (1, 0)', () => {
+    const { inputs, expected } = check<{ w: number[] }, { A: number[] }>('haufe');
+    // s and d each 0 or 2 in all four combinations: uncorrelated, unit variance. Fold 1 trains fold 0's readout.
+    const s = [0, 0, 2, 2, 0, 0, 2, 2];
+    const d = [0, 2, 0, 2, 0, 2, 0, 2];
+    const rows = s.map((value, i) => [value + d[i], d[i]]);
+    const found = weightsOfFirstFold(sessionOf(rows, s, [0, 0, 0, 0, 1, 1, 1, 1], leastSquares));
+    inputs.w.forEach((w, j) => expect(found.weights[j]).toBeCloseTo(w, 12));
+    expected.A.forEach((a, j) => expect(found.pattern[j]).toBeCloseTo(a, 12));
+  });
+  it('ridge on attitude: weights and patterns in units of each predictor’s standard deviation', () => {
+    const { expected } = check<object, { w_std: number[]; 'pattern_cov(Z,s)/var(s)': number[] }>('edf');
+    const table = checkTable('attitude.csv');
+    // All 30 rows train the readout of a fold that holds out four copies of other rows.
+    const rows = [...table, ...table.slice(0, 4)];
+    const folds = rows.map((_, i) => (i < 30 ? 1 : 0));
+    const found = weightsOfFirstFold(
+      sessionOf(
+        rows.map((row) => row.slice(1)),
+        rows.map((row) => row[0]),
+        folds,
+        { kind: 'ridge', penalty: { value: 10 } },
+      ),
+    );
+    for (let j = 0; j < 6; j += 1) {
+      const column = table.map((row) => row[j + 1]);
+      const centre = column.reduce((a, b) => a + b) / 30;
+      const sd = Math.sqrt(column.reduce((sum, v) => sum + (v - centre) ** 2, 0) / 30);
+      expect(found.weights[j] * sd).toBeCloseTo(expected.w_std[j], 9);
+      expect(found.pattern[j] / sd).toBeCloseTo(expected['pattern_cov(Z,s)/var(s)'][j], 9);
+    }
   });
 });
 
