@@ -10,8 +10,12 @@ import { format, resolveConfig } from 'prettier';
 
 const root = fileURLToPath(new URL('..', import.meta.url));
 const target = `${root}app/api/v1/openapi.json/registered-routes.ts`;
-// The document's own route adds itself; Auth.js's are no part of the API.
-const left = new Set(['app/api/v1/openapi.json/route.ts', 'app/api/auth/[...nextauth]/route.ts']);
+// The document's own route adds itself; Auth.js's and the one for unknown addresses are no part of the API.
+const left = new Set([
+  'app/api/v1/openapi.json/route.ts',
+  'app/api/auth/[...nextauth]/route.ts',
+  'app/api/[...unknown]/route.ts',
+]);
 
 const files = readdirSync(`${root}app/api`, { recursive: true })
   .map((name) => `app/api/${String(name)}`)

@@ -8,6 +8,7 @@ import { within } from '@/lib/jobs/within';
 import { announceWorker, withdrawWorker } from '@/lib/jobs/worker-presence';
 import { log } from '@/lib/log/log';
 import { forgetSent } from '@/lib/services/outbox/forget-sent';
+import { sendWaitingMails } from '@/lib/services/mails/send-waiting-mails';
 import { reconcileWork } from '@/lib/services/outbox/reconcile-work';
 import { relayOutbox } from '@/lib/services/outbox/relay-outbox';
 import { computePool } from '@/worker/compute/compute-pool';
@@ -40,6 +41,7 @@ const loops = [
     reconcileWork({ staleMs: settings.WORKER_STALE_MS, waitingMs: settings.WORKER_WAITING_MS }),
   ),
   repeat('forget what was sent long ago', 600_000, forgetSent),
+  repeat('send mails', 2_000, () => sendWaitingMails()),
   repeat('say that the worker is alive', 4_000, () => announceWorker(workerId)),
 ];
 log.info(

@@ -22,10 +22,12 @@ export async function lockAuditHead(
   trx: Knex.Transaction,
   chainId: string,
 ): Promise<{ entryCount: number; hash: string | null }> {
-  // The insert comes first: two first writers then queue on the key instead of deadlocking over a gap lock.
-  await trx.raw('insert ignore into audit_heads (chain_id, entry_count, hash) values (?, 0, null)', [
-    chainId,
-  ]);
+  // Not `insert ignore` and not `select` first: both take a shared or gap lock here, and two writers would then each
+  // wait for the other. This statement takes the exclusive lock of the row at once, whether it is new or not.
+  await trx.raw(
+    'insert into audit_heads (chain_id, entry_count, hash) values (?, 0, null) on duplicate key update chain_id = chain_id',
+    [chainId],
+  );
   const row = await trx<{ chain_id: string; entry_count: number; hash: string | null }>('audit_heads')
     .where({ chain_id: chainId })
     .forUpdate()

@@ -44,3 +44,31 @@ export async function findMember(q: Knex, labId: string, userId: string): Promis
 export async function listMemberships(q: Knex, userId: string): Promise<MemberRow[]> {
   return members(q).where({ 'm.user_id': userId }).orderBy(['m.created_at', 'm.lab_id']);
 }
+
+/** A lab's members, the oldest membership first. */
+export async function listLabMembers(q: Knex, labId: string): Promise<(MemberRow & { joined_at: Date })[]> {
+  return members(q)
+    .select('m.created_at as joined_at')
+    .where({ 'm.lab_id': labId })
+    .orderBy(['m.created_at', 'm.user_id']);
+}
+
+/** Locks the lab's leads, and gives how many there are: a lab must keep one. */
+export async function countLeadsLocked(trx: Knex.Transaction, labId: string): Promise<number> {
+  const rows = await trx('memberships').where({ lab_id: labId, role: 'lead' }).forUpdate().select('user_id');
+  return rows.length;
+}
+
+export async function changeMembershipRole(
+  trx: Knex,
+  labId: string,
+  userId: string,
+  role: Role,
+): Promise<void> {
+  await trx('memberships').where({ lab_id: labId, user_id: userId }).update({ role });
+}
+
+/** Ends a membership; the member's tokens in this lab go with it. */
+export async function deleteMembership(trx: Knex, labId: string, userId: string): Promise<void> {
+  await trx('memberships').where({ lab_id: labId, user_id: userId }).delete();
+}

@@ -4,6 +4,8 @@ import type { MemberRow } from './memberships';
 export interface SignInRow {
   id: string;
   user_id: string;
+  /** The lab that the session looks at. */
+  lab_id: string | null;
   agent: string;
   address: string;
   last_seen_at: Date;
@@ -13,7 +15,7 @@ export interface SignInRow {
 
 export async function insertSignIn(
   q: Knex,
-  row: Pick<SignInRow, 'id' | 'user_id' | 'agent' | 'address' | 'last_seen_at'>,
+  row: Pick<SignInRow, 'id' | 'user_id' | 'lab_id' | 'agent' | 'address' | 'last_seen_at'>,
 ): Promise<void> {
   await q('sign_ins').insert(row);
 }
@@ -21,13 +23,13 @@ export async function insertSignIn(
 /** The member behind a browser session that has neither ended nor been idle since `idleSince`. */
 export async function findSignedInMember(
   q: Knex,
-  key: { signInId: string; userId: string; labId: string; idleSince: Date },
+  key: { signInId: string; userId: string; idleSince: Date },
 ): Promise<(MemberRow & { last_seen_at: Date }) | null> {
   const row = (await q('sign_ins as s')
     .join('users as u', 'u.id', 's.user_id')
-    .join('memberships as m', 'm.user_id', 's.user_id')
+    .join('memberships as m', (on) => on.on('m.user_id', 's.user_id').andOn('m.lab_id', 's.lab_id'))
     .join('labs as l', 'l.id', 'm.lab_id')
-    .where({ 's.id': key.signInId, 's.user_id': key.userId, 'm.lab_id': key.labId })
+    .where({ 's.id': key.signInId, 's.user_id': key.userId })
     .whereNull('s.ended_at')
     .where('s.last_seen_at', '>', key.idleSince)
     .first(

@@ -27,6 +27,11 @@ export async function findUser(q: Knex, userId: string): Promise<UserRow | null>
   return row ?? null;
 }
 
+/** Sets a new password; sessions go on. */
+export async function setPasswordHash(q: Knex, userId: string, passwordHash: string): Promise<void> {
+  await q('users').where({ id: userId }).update({ password_hash: passwordHash });
+}
+
 /** Sets a new password and moves the session epoch on: every session signed in before is over. */
 export async function changePasswordHash(q: Knex, userId: string, passwordHash: string): Promise<void> {
   await q('users')

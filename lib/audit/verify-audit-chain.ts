@@ -8,6 +8,14 @@ export interface AuditFault {
   message: string;
 }
 
+export interface AuditReport {
+  chainId: string;
+  entries: number;
+  /** The last row's hash on record; null for an empty chain. */
+  headHash: string | null;
+  faults: AuditFault[];
+}
+
 const batchSize = 1000;
 
 /**
@@ -16,9 +24,7 @@ const batchSize = 1000;
  * reach the head. Whoever can rewrite all of the database can rewrite the chain too: keep the head's hash elsewhere
  * (in a backup, on paper) to notice that.
  */
-export async function verifyAuditChain(
-  chainId: string,
-): Promise<{ chainId: string; entries: number; faults: AuditFault[] }> {
+export async function verifyAuditChain(chainId: string): Promise<AuditReport> {
   const faults: AuditFault[] = [];
   // The head first: rows that are written meanwhile lie behind it and are not counted.
   const head = (await listAuditHeads(db())).find((item) => item.chainId === chainId);
@@ -54,5 +60,5 @@ export async function verifyAuditChain(
       entryId: null,
       message: `the chain's end is not the one on record: ${entries} rows found, ${wanted} written`,
     });
-  return { chainId, entries, faults };
+  return { chainId, entries, headHash: head?.hash ?? null, faults };
 }

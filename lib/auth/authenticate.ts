@@ -30,7 +30,7 @@ export async function authenticate(
   const cookie = cookieValue(request.headers.get('cookie'), sessionCookieName());
   const session = cookie === null ? null : await readSession(cookie);
   if (session === null) throw refused();
-  return { actor: session.actor, requestId };
+  return { actor: session.actor, requestId, signInId: session.signInId };
 }
 
 async function byToken(request: Request, token: string, requestId: string): Promise<Ctx> {

@@ -18,5 +18,9 @@ export const requirePageContext: () => Promise<Ctx> = cache(async () => {
     const path = head.get('x-outfold-path') ?? '/';
     redirect(path === '/' ? '/sign-in' : `/sign-in?next=${encodeURIComponent(path)}`);
   }
-  return { actor: session.actor, requestId: head.get('x-request-id') ?? v7() };
+  return {
+    actor: session.actor,
+    requestId: head.get('x-request-id') ?? v7(),
+    signInId: session.signInId,
+  };
 });

@@ -21,7 +21,6 @@ export async function readSession(token: string): Promise<{ actor: Actor; signIn
   const member = await findSignedInMember(db(), {
     signInId: claims.signInId,
     userId: claims.userId,
-    labId: claims.labId,
     idleSince: new Date(now - sessionIdleMs),
   });
   if (member === null || member.session_epoch !== claims.epoch) return null;

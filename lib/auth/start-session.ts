@@ -17,6 +17,7 @@ export async function startSession(
     await insertSignIn(trx, {
       id: signInId,
       user_id: actor.userId,
+      lab_id: actor.labId,
       agent: request.agent.slice(0, 300),
       address: request.address.slice(0, 60),
       last_seen_at: now,

@@ -4,9 +4,9 @@ import type { Ctx } from '@/lib/services/context';
 
 /**
  * Who may call: `lab` a member by cookie or bearer token; `labOrBasic` also by HTTP Basic with email and password;
- * `public` anybody.
+ * `signedIn` a member in a browser only, because no token may touch an account; `public` anybody.
  */
-export type Access = 'lab' | 'labOrBasic' | 'public';
+export type Access = 'lab' | 'labOrBasic' | 'signedIn' | 'public';
 /** A schema for JSON, the raw web stream handed on, or no body at all. */
 export type BodyKind = z.ZodType | 'stream' | 'none';
 /** A schema for the DTO, or the content types of a Response that the verb makes itself. */

@@ -50,6 +50,8 @@ export function route<
       checkOrigin(request);
       if (definition.access !== 'public')
         ctx = await authenticate(request, requestId, { basic: definition.access === 'labOrBasic' });
+      if (definition.access === 'signedIn' && ctx?.signInId === undefined)
+        throw new AppError('forbidden', 'This concerns your account: sign in to do it. A token cannot.');
       Object.assign(
         headers,
         ctx === null

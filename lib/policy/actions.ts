@@ -20,6 +20,9 @@ export const actions = [
   'token.read',
   'token.create',
   'token.revoke',
+  'member.read',
+  'member.invite',
+  'member.change',
   'audit.read',
   'events.read',
 ] as const;

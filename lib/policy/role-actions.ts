@@ -9,10 +9,11 @@ const reads: Action[] = [
   'exclusion.read',
   'readout.read',
   'events.read',
+  'member.read',
 ];
 /** Everybody keeps their own tokens; a token never does more than its maker's present role. */
 const ownTokens: Action[] = ['token.read', 'token.create', 'token.revoke'];
-const labAdministration: Action[] = ['audit.read'];
+const labAdministration: Action[] = ['member.invite', 'member.change', 'audit.read'];
 
 /** The policy: what each role in a lab includes. */
 export const roleActions: Readonly<Record<Role, readonly Action[]>> = {

@@ -38,6 +38,9 @@ export const scopeActions: Readonly<Record<Scope, readonly Action[]>> = {
     'token.read',
     'token.create',
     'token.revoke',
+    'member.read',
+    'member.invite',
+    'member.change',
     'audit.read',
   ],
 };

@@ -17,4 +17,6 @@ export interface Actor {
 export interface Ctx {
   actor: Actor;
   requestId: string;
+  /** The browser session that asks; missing for tokens and for the worker. */
+  signInId?: string;
 }

@@ -64,6 +64,7 @@ function operation(
     tags: [path.replace(/^\/api\/(v1\/)?/, '').split('/')[0]],
     ...(definition.summary === undefined ? {} : { summary: definition.summary }),
     ...(definition.access === 'public' ? { security: [] } : {}),
+    ...(definition.access === 'signedIn' ? { security: [{ session: [] }] } : {}),
     ...(definition.access === 'labOrBasic'
       ? { security: [{ bearer: [] }, { session: [] }, { basic: [] }] }
       : {}),

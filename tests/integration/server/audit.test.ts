@@ -34,13 +34,13 @@ describe('the audit chain', () => {
   it('stays linear and whole under parallel writers of several labs', async () => {
     const labs = [await insertLab(), await insertLab()];
     await Promise.all(
-      Array.from({ length: 40 }, (_, i) => {
+      Array.from({ length: 120 }, (_, i) => {
         const lab = labs[i % 2];
         return createStudy({ actor: actorOf(lab), requestId: v7() }, { name: `Study ${i}`, question: '' });
       }),
     );
     for (const { labId } of labs)
-      expect(await verifyAuditChain(labId)).toEqual({ chainId: labId, entries: 20, faults: [] });
+      expect(await verifyAuditChain(labId)).toMatchObject({ entries: 60, faults: [] });
   });
 
   it('leaves nothing behind when the transaction fails', async () => {

@@ -1,12 +1,14 @@
 import { v7 } from 'uuid';
 import { db } from '@/db/connection';
 import { insertReadout, takeReadoutNumber } from '@/db/repositories/readouts';
+import { insertInvitation } from '@/db/repositories/invitations';
+import { insertSignIn } from '@/db/repositories/sign-ins';
 import { inTransaction } from '@/db/transaction';
 import { recipeSchema } from '@/lib/contracts/recipe';
 import { createFile } from '@/lib/services/files/create-file';
 import { createToken } from '@/lib/services/tokens/create-token';
 import { makeData, makeSession } from '@/tests/integration/readouts/made-session';
-import { insertSession, type LabRows } from '@/tests/support/rows';
+import { insertMember, insertSession, type LabRows } from '@/tests/support/rows';
 import { actorOf } from './support';
 
 const data = makeData({ nTrials: 30, nUnits: 4, nBins: 3 });
@@ -20,6 +22,9 @@ export interface Things {
   fileId: string;
   readoutId: string;
   tokenId: string;
+  signInId: string;
+  invitationId: string;
+  memberId: string;
 }
 
 /** Makes one of each, with `owner` as the author of the lab's things and `member` as the owner of the token. */
@@ -44,6 +49,9 @@ export async function makeThings(owner: LabRows, member: LabRows = owner): Promi
     fileId: file.id,
     readoutId: await insertQueuedReadout(owner, sessionId),
     tokenId: token.id,
+    signInId: await insertOpenSignIn(member),
+    invitationId: await insertOpenInvitation(owner),
+    memberId: (await insertMember(owner.labId, 'observer')).userId,
   };
 }
 
@@ -82,5 +90,32 @@ async function insertQueuedReadout(owner: LabRows, sessionId: string): Promise<s
       authorId: owner.userId,
     }),
   );
+  return id;
+}
+
+async function insertOpenSignIn(member: LabRows): Promise<string> {
+  const id = v7();
+  await insertSignIn(db(), {
+    id,
+    user_id: member.userId,
+    lab_id: member.labId,
+    agent: 'test',
+    address: '127.0.0.1',
+    last_seen_at: new Date(),
+  });
+  return id;
+}
+
+async function insertOpenInvitation(owner: LabRows): Promise<string> {
+  const id = v7();
+  await insertInvitation(db(), {
+    id,
+    lab_id: owner.labId,
+    email: `${id}@lab.test`,
+    role: 'observer',
+    invited_by: owner.userId,
+    expires_at: new Date(Date.now() + 3_600_000),
+    created_at: new Date(),
+  });
   return id;
 }

@@ -30,6 +30,9 @@ const promised: Record<Action, string> = {
   'token.read': 'laeo/m',
   'token.create': 'laeo/m',
   'token.revoke': 'laeo/m',
+  'member.read': 'laeo/m',
+  'member.invite': 'l/m',
+  'member.change': 'l/m',
   'audit.read': 'l/m',
   'events.read': 'laeo/rium',
 };
