@@ -8,5 +8,5 @@ export const keys = {
   predictions: (labId: string, sessionId: string, readoutId: string) =>
     `labs/${labId}/sessions/${sessionId}/readouts/${readoutId}/predictions.arrow`,
   readoutInputs: (labId: string, sessionId: string, readoutId: string) =>
-    `labs/${labId}/sessions/${sessionId}/readouts/${readoutId}/inputs.json`,
+    `labs/${labId}/sessions/${sessionId}/readouts/${readoutId}/inputs.arrow`,
 } as const;

@@ -54,3 +54,6 @@ export type ToReader =
   | { kind: 'task'; task: ReaderTask }
   | { kind: 'bytes'; request: number; bytes: Uint8Array }
   | { kind: 'kept'; request: number };
+
+/** The descriptor over which a reader process asks for bytes when it cannot wait for a message. */
+export const syncDescriptor = 4;

@@ -1,4 +1,5 @@
 import os from 'node:os';
+import { log } from '@/lib/log/log';
 import type { FromChild, ToChild } from '@/worker/compute/messages';
 import { computeReadout } from '@/worker/compute/compute-readout';
 import { openThreads } from '@/worker/compute/run-chunks';
@@ -36,7 +37,7 @@ process.on('message', (message: ToChild) => {
 pool.backend.then(
   () => send({ kind: 'ready' }),
   (error: unknown) => {
-    console.error(error);
+    log.fatal({ err: error }, 'a compute process could not start');
     process.kill(process.pid, 'SIGKILL');
   },
 );

@@ -1,5 +1,5 @@
 import type { ComputeRequest } from '@/worker/compute/messages';
-import { readInputs } from '@/lib/services/readouts/readout-inputs';
+import { permutationRows, readPermutations } from '@/lib/services/readouts/readout-inputs';
 import { objectStore } from '@/storage/object-store';
 
 /** Given permutations, from the recipe or from where they were put when the recipe was too long; undefined without. */
@@ -10,5 +10,5 @@ export async function loadPermutations({
   if (recipe.null.kind !== 'given') return undefined;
   if (Array.isArray(recipe.null.permutations)) return recipe.null.permutations;
   if (inputsKey === null) return undefined;
-  return readInputs(await objectStore().getBytes(inputsKey)).permutations;
+  return permutationRows(readPermutations(await objectStore().getBytes(inputsKey)));
 }

@@ -12,8 +12,8 @@ import { authorize } from '@/lib/services/authorize';
 import type { Ctx } from '@/lib/services/context';
 import { pokeRelay } from '@/lib/services/outbox/poke-relay';
 import { invalidRecipe } from '@/lib/services/readouts/invalid-recipe';
-import { prepareRecipe } from '@/lib/services/readouts/prepare-recipe';
-import { writeInputs } from '@/lib/services/readouts/readout-inputs';
+import { prepareRecipe, type PreparedRecipe } from '@/lib/services/readouts/prepare-recipe';
+import { hashPermutations, writePermutations } from '@/lib/services/readouts/readout-inputs';
 import { toReadout } from '@/lib/services/readouts/to-readout';
 import { keys } from '@/storage/keys';
 import { objectStore } from '@/storage/object-store';
@@ -35,11 +35,10 @@ export async function createReadout(
   const id = v7();
   const prepared = await prepareRecipe(labId, sessionId, input.recipe, id);
   if (prepared.faults.length > 0) throw invalidRecipe(prepared.faults);
-  const recipeHash = createHash('sha256').update(canonicalJson(prepared.recipe)).digest('hex');
+  const { recipe, recipeHash, inputs } = keepRecipe(prepared);
   const inputsKey = keys.readoutInputs(labId, sessionId, id);
-  const { recipe, inputs } = partLongInputs(prepared.recipe);
   // Before the row: a row must never name an object that is not there. One that no row names is only a few bytes lost.
-  if (inputs) await objectStore().put(inputsKey, inputs, 'application/json');
+  if (inputs) await objectStore().put(inputsKey, inputs, 'application/vnd.apache.arrow.stream');
 
   const made = await inTransaction(async (trx) => {
     const number = await takeReadoutNumber(trx, labId, sessionId);
@@ -70,15 +69,26 @@ export async function createReadout(
   return made;
 }
 
-/** Long permutations go to the object store; the recipe keeps their hash. */
-function partLongInputs(recipe: Recipe): { recipe: Recipe; inputs: Uint8Array | null } {
-  const { permutations, ...scheme } = recipe.null;
-  if (!Array.isArray(permutations)) return { recipe, inputs: null };
-  const entries = permutations.reduce((sum, row) => sum + row.length, 0);
-  if (entries <= maxInlineEntries) return { recipe, inputs: null };
-  const permutationsSha256 = createHash('sha256').update(canonicalJson(permutations)).digest('hex');
+/**
+ * The recipe as its row keeps it, and what goes to the object store instead: long permutations, and those of a file, which
+ * may be removed some day. The hash covers the permutations' content, so it does not matter how they were sent.
+ */
+function keepRecipe({ recipe, permutations }: PreparedRecipe): {
+  recipe: Recipe;
+  recipeHash: string;
+  inputs: Uint8Array | null;
+} {
+  const hashOf = (value: Recipe) => createHash('sha256').update(canonicalJson(value)).digest('hex');
+  if (!permutations) return { recipe, recipeHash: hashOf(recipe), inputs: null };
+  const { permutations: sent, ...scheme } = recipe.null;
+  const permutationsSha256 = hashPermutations(permutations);
+  const brief = { ...recipe, null: { ...scheme, permutationsSha256 } };
+  const recipeHash = hashOf(brief);
+  const isInline = Array.isArray(sent);
+  if (isInline && permutations.values.length <= maxInlineEntries) return { recipe, recipeHash, inputs: null };
   return {
-    recipe: { ...recipe, null: { ...scheme, permutationsSha256 } },
-    inputs: writeInputs({ permutations }),
+    recipe: isInline ? brief : { ...brief, null: { ...brief.null, permutations: sent } },
+    recipeHash,
+    inputs: writePermutations(permutations),
   };
 }

@@ -10,6 +10,8 @@ import { checkRecipe } from '@/lib/services/readouts/check-recipe';
 import { exclusionsOf } from '@/lib/services/readouts/exclusions-of';
 import { fillRecipe } from '@/lib/services/readouts/fill-recipe';
 import { loadSessionTables } from '@/lib/services/readouts/load-session-tables';
+import { findPermutations } from '@/lib/services/readouts/find-permutations';
+import type { Permutations } from '@/lib/services/readouts/readout-inputs';
 import type { RecipeFault } from '@/lib/services/readouts/recipe-fault';
 import type { ResolvedRecipe } from '@/lib/services/readouts/resolve-recipe';
 import { sessionParts } from '@/lib/services/readouts/session-parts';
@@ -20,6 +22,8 @@ export interface PreparedRecipe {
   faults: RecipeFault[];
   /** null where there are faults. */
   resolved: ResolvedRecipe | null;
+  /** The given permutations, wherever they came from; null without. */
+  permutations: Permutations | null;
 }
 
 /**
@@ -45,6 +49,7 @@ export async function prepareRecipe(
       subject,
       recipe,
       resolved: null,
+      permutations: null,
       faults: [
         {
           pointer: '/recipe/exclusions/version',
@@ -55,13 +60,29 @@ export async function prepareRecipe(
     };
   const excluded = await exclusionsOf(labId, sessionId, recipe);
   const tables = await loadSessionTables(sessionParts({ labId, sessionId, ...subject }), subject);
-  const { permutations } = recipe.null;
+  const permutations = await findPermutations(labId, sessionId, recipe.null);
   const checked = checkRecipe(recipe, tables, {
     excludedTrials: excluded.trials,
     excludedUnits: excluded.units,
-    ...(Array.isArray(permutations) ? { permutations } : {}),
+    ...(permutations.rows ? { permutations: permutations.rows } : {}),
   });
-  return 'faults' in checked
-    ? { subject, recipe, faults: checked.faults, resolved: null }
-    : { subject, recipe, faults: [], resolved: checked.resolved };
+  // What is wrong with a file is told instead of "there are no permutations", which follows from it.
+  const faults = [
+    ...permutations.faults,
+    ...('faults' in checked ? checked.faults : []).filter(
+      ({ pointer }) => permutations.faults.length === 0 || pointer !== '/recipe/null/permutations',
+    ),
+  ];
+  if (faults.length > 0 || 'faults' in checked)
+    return { subject, recipe, faults, resolved: null, permutations: null };
+  const drawn = permutations.rows
+    ? { ...recipe, null: { ...recipe.null, draws: permutations.rows.length } }
+    : recipe;
+  return {
+    subject,
+    recipe: drawn,
+    faults: [],
+    resolved: checked.resolved,
+    permutations: permutations.matrix,
+  };
 }

@@ -1,6 +1,8 @@
 import { rmSync } from 'node:fs';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { v7 } from 'uuid';
 import { db } from '@/db/connection';
+import { insertFile } from '@/db/repositories/files';
 import { closeRedis, redis } from '@/lib/jobs/connection';
 import { enqueue } from '@/lib/jobs/enqueue';
 import { closeQueues } from '@/lib/jobs/queues';
@@ -13,6 +15,8 @@ import { getReadout } from '@/lib/services/readouts/get-readout';
 import { listPredictions } from '@/lib/services/readouts/list-predictions';
 import { listReadouts } from '@/lib/services/readouts/list-readouts';
 import { sendPredictions } from '@/lib/services/readouts/send-predictions';
+import { keys } from '@/storage/keys';
+import { objectStore } from '@/storage/object-store';
 import { ctxOf } from '@/tests/integration/readouts/ctx-of';
 import { makeData, makeSession, type MadeSession } from '@/tests/integration/readouts/made-session';
 import { until } from '@/tests/integration/readouts/until';
@@ -47,6 +51,36 @@ const atRest = (id: string): Promise<Readout> =>
     const readout = await getReadout(ctx(), { readoutId: id });
     return readout.state === 'queued' || readout.state === 'running' ? null : readout;
   });
+
+/** A matrix of indices as an NPY file of the session (the format's published header, version 1.0). */
+async function putNpy(rows: number[][]): Promise<string> {
+  const header = `{'descr': '<i4', 'fortran_order': False, 'shape': (${rows.length}, ${rows[0].length}), }`;
+  const padded = `${header.padEnd(117)}\n`;
+  const bytes = Buffer.concat([
+    Buffer.from([0x93, ...Buffer.from('NUMPY'), 1, 0, padded.length & 255, padded.length >> 8]),
+    Buffer.from(padded, 'latin1'),
+    Buffer.from(Int32Array.from(rows.flat()).buffer),
+  ]);
+  const id = v7();
+  const { labId, userId } = made.lab;
+  const key = keys.file(labId, made.sessionId, id);
+  await objectStore().put(key, bytes);
+  await insertFile(db(), {
+    id,
+    lab_id: labId,
+    session_id: made.sessionId,
+    name: 'permutations.npy',
+    size_bytes: bytes.length,
+    part_size_bytes: 8 * 2 ** 20,
+    claimed_sha256: null,
+    object_key: key,
+    upload_id: null,
+    state: 'readable',
+    created_by: userId,
+    created_at: new Date(),
+  });
+  return id;
+}
 
 describe('a readout', () => {
   it('ends with a result, a record and predictions, and is written once', async () => {
@@ -142,6 +176,30 @@ describe('a readout', () => {
     expect(short.recipe.null.permutations).toHaveLength(50);
     const shortDone = await atRest(short.id);
     expect(shortDone.result!.null!.values).toEqual(done.result!.null!.values!.slice(0, 50));
+    // The same permutations as an array of a file: the same numbers, and the same hash of the recipe.
+    const fileId = await putNpy(permutations);
+    const fromFile = await start({
+      label: 'fraction',
+      seed: readout.recipe.seed,
+      folds: { kind: 'given', assignment },
+      null: { kind: 'given', permutations: { fileId, path: '' } },
+    });
+    expect(fromFile.recipe.null).toMatchObject({ draws: 150, permutations: { fileId, path: '' } });
+    const fromFileDone = await atRest(fromFile.id);
+    expect(fromFileDone.result).toEqual(done.result);
+    expect(fromFileDone.provenance!.recipeHash).toBe(done.provenance!.recipeHash);
+    const wrong = await putNpy(permutations.map((row) => row.slice(1)));
+    await expect(
+      start({ label: 'fraction', null: { kind: 'given', permutations: { fileId: wrong, path: '' } } }),
+    ).rejects.toMatchObject({
+      code: 'invalid-input',
+      faults: [{ pointer: '/recipe/null/permutations/0', code: 'length' }],
+    });
+    await expect(
+      start({ label: 'fraction', null: { kind: 'given', permutations: { fileId: wrong, path: 'other' } } }),
+    ).rejects.toMatchObject({
+      faults: [{ pointer: '/recipe/null/permutations/path', code: 'array-not-found' }],
+    });
   });
 
   it('is refused at once with pointers when the recipe does not fit the session', async () => {
