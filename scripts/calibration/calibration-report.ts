@@ -2,6 +2,7 @@ import {
   cells,
   type CoverageCell,
   type GroupCell,
+  type InjectionCell,
   type LabelCell,
   type NullCell,
   nullSchemes,
@@ -72,6 +73,14 @@ Five sessions an animal, sessions of an animal differ by .03, each measured with
 product's interval (Knapp–Hartung, floored), beside it the unfloored; "flat" treats sessions as if each came from its own animal.
 
 ${groupTable(tallyOf)}
+
+## Signal injection
+
+Null sessions as above (independent labels, steady units, stratified folds, free shuffle). "Stated" is the power that the injection control
+works out from one session, averaged over sessions; "fresh" the share of new sessions of the same units, with a signal of the same size
+put in, in which the readout's p is at most .05.
+
+${injectionTable(tallyOf)}
 `;
 }
 
@@ -138,6 +147,19 @@ function groupTable(tallyOf: Lookup): string {
       if (tally === null) return [cell.nAnimals, cell.animalSd, 0, '', '', ''];
       const of = (name: string): string => rate(tally[`${name} covered`] ?? 0, tally.sessions);
       return [cell.nAnimals, cell.animalSd, tally.sessions, of('floored'), of('unfloored'), of('flat')];
+    }),
+  );
+}
+
+function injectionTable(tallyOf: Lookup): string {
+  const [cell] = cells.filter((one): one is InjectionCell => one.kind === 'injection');
+  const tally = tallyOf(cell.id);
+  return table(
+    ['population R²', 'n', 'stated power', 'fresh sessions found'],
+    cell.sizes.map((size) => {
+      if (tally === null) return [size, 0, '', ''];
+      const fresh = rate(tally[`${size} found`] ?? 0, tally.sessions);
+      return [size, tally.sessions, rate(tally[`${size} stated`] ?? 0, tally.sessions), fresh];
     }),
   );
 }

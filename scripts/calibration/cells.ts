@@ -44,7 +44,14 @@ export interface GroupCell {
   animalSd: number;
 }
 
-export type Cell = NullCell | CoverageCell | LabelCell | GroupCell;
+/** Power that the injection control states against the rate at which fresh sessions with such a signal are found. */
+export interface InjectionCell {
+  kind: 'injection';
+  id: string;
+  sizes: number[];
+}
+
+export type Cell = NullCell | CoverageCell | LabelCell | GroupCell | InjectionCell;
 
 export const nullSchemes: readonly NullScheme[] = ['free', 'within', 'groups', 'circularShift'];
 
@@ -138,4 +145,5 @@ export const cells: readonly Cell[] = [
   coverageCell(200, 60, 0.3, { hasDrift: true }),
   ...labelCells(),
   ...groupCells(),
+  { kind: 'injection', id: 'injection', sizes: [0.05, 0.1, 0.2, 0.3] },
 ];

@@ -29,18 +29,19 @@ export interface NullSession {
 
 /**
  * One simulated null session. Poisson units with rates of 2–10 spikes, a gain that all share on a trial (sd .2) and, with drift, a
- * random walk of each unit's log rate (steps of .05 a trial, so about 55 % over the session).
+ * random walk of each unit's log rate (steps of .05 a trial, so about 55 % over the session). `fresh` > 0: new trials of the same units.
  */
-export function nullSession(design: LabelDesign, hasDrift: boolean, seed: number): NullSession {
+export function nullSession(design: LabelDesign, hasDrift: boolean, seed: number, fresh = 0): NullSession {
   const { nTrials, nUnits, blockTrials } = nullSize;
   const units = splitGenerator(seed, hasDrift ? 'null units, drift' : 'null units');
   const logRate = Float64Array.from({ length: nUnits }, () => Math.log(2 + 8 * randomUniform(units)));
   const counts = new Int32Array(nTrials * nUnits);
+  const noise = fresh === 0 ? units : splitGenerator(seed, 'null units, fresh', fresh);
   for (let i = 0; i < nTrials; i += 1) {
-    const gain = 0.2 * randomNormal(units);
+    const gain = 0.2 * randomNormal(noise);
     for (let j = 0; j < nUnits; j += 1) {
-      if (hasDrift) logRate[j] += 0.05 * randomNormal(units);
-      counts[i * nUnits + j] = randomPoisson(units, Math.exp(logRate[j] + gain));
+      if (hasDrift) logRate[j] += 0.05 * randomNormal(noise);
+      counts[i * nUnits + j] = randomPoisson(noise, Math.exp(logRate[j] + gain));
     }
   }
   return {

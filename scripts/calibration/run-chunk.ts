@@ -12,6 +12,7 @@ import {
   type NullCell,
   nullSchemes,
 } from '@/scripts/calibration/cells';
+import { addInjection } from '@/scripts/calibration/add-injection';
 import { nullSession } from '@/scripts/calibration/null-session';
 import { runNullSession } from '@/scripts/calibration/run-null-session';
 import { runSignalSession } from '@/scripts/calibration/run-signal-session';
@@ -23,7 +24,7 @@ export const CHUNK_SEEDS = 50;
 /** Sums over a chunk's sessions; chunks add up in any order. */
 export type Tally = Record<string, number>;
 
-type Add = (name: string, amount: number) => void;
+export type Add = (name: string, amount: number) => void;
 
 /** Runs seeds chunk·50 … chunk·50 + 49 of a cell. The same chunk always gives the same tally. */
 export function runCalibrationChunk(cell: Cell, chunk: number, linalg: Linalg): Tally {
@@ -42,6 +43,9 @@ export function runCalibrationChunk(cell: Cell, chunk: number, linalg: Linalg): 
         break;
       case 'label':
         addLabel(cell, seed, add);
+        break;
+      case 'injection':
+        addInjection(cell, seed, linalg, add);
         break;
       case 'group':
         addGroup(cell, seed, add);

@@ -13,17 +13,13 @@ export type NullScheme = 'free' | 'within' | 'groups' | 'circularShift';
 /** Draws of the shuffled control; at .05 the test is exact with 99. */
 const DRAWS = 99;
 
-/**
- * The shuffled control of the engine's readout of a simulated null session, whole pipeline in every draw. Intervals, which the test
- * does not need, are left out to save time. Returns null where the scheme has no second arrangement of these labels.
- */
-export function runNullSession(
+/** The readout of a null session as the engine takes it. */
+export function nullInput(
   session: NullSession,
   scheme: NullScheme,
   folds: NullFolds,
   seed: number,
-  linalg: Linalg,
-): NullNumbers | null {
+): ReadoutInput {
   const { nTrials, nUnits } = nullSize;
   const nullScheme: NullSpec =
     scheme === 'within' || scheme === 'groups'
@@ -33,7 +29,7 @@ export function runNullSession(
     folds === 'stratified'
       ? { kind: 'stratified', k: 5, repeats: 1 }
       : { kind: 'contiguous', k: 5, purgeTrials: 5 };
-  const input: ReadoutInput = {
+  return {
     counts: session.counts,
     nTrials,
     nUnits,
@@ -55,6 +51,20 @@ export function runNullSession(
     views: [],
     seed,
   };
+}
+
+/**
+ * The shuffled control of the engine's readout of a simulated null session, whole pipeline in every draw. Intervals, which the test
+ * does not need, are left out to save time. Returns null where the scheme has no second arrangement of these labels.
+ */
+export function runNullSession(
+  session: NullSession,
+  scheme: NullScheme,
+  folds: NullFolds,
+  seed: number,
+  linalg: Linalg,
+): NullNumbers | null {
+  const input = nullInput(session, scheme, folds, seed);
   const planned = planReadout(input);
   if (!planned.ok) {
     if (scheme === 'within') return null;
