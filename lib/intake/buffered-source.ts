@@ -22,6 +22,9 @@ export function bufferedSource(source: ByteSource): ByteSource {
   };
   return {
     sizeBytes: source.sizeBytes,
+    ...(source.readSync
+      ? { readSync: (offset: number, length: number) => source.readSync!(offset, length) }
+      : {}),
     read: async (offset, length) => {
       if (offset < 0 || length < 0 || offset + length > source.sizeBytes)
         throw new RangeError(`bytes ${offset} to ${offset + length} of ${source.sizeBytes}`);

@@ -5,4 +5,6 @@
 export interface ByteSource {
   readonly sizeBytes: number;
   read(offset: number, length: number): Promise<Uint8Array>;
+  /** The same at once, for libraries that cannot wait. Not every source has it. */
+  readSync?(offset: number, length: number): Uint8Array;
 }

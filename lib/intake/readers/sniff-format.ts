@@ -1,17 +1,12 @@
 import type { ByteSource } from '@/lib/intake/byte-source';
 import { IntakeRefusal } from '@/lib/intake/intake-refusal';
 
-export type ReadableFormat = 'npy' | 'npz' | 'csv' | 'mat5';
+export type ReadableFormat = 'npy' | 'npz' | 'csv' | 'mat5' | 'hdf5';
 
-const FORMATS = 'Send NPY, NPZ, CSV, TSV or MAT (version 6 or 7).';
+const FORMATS = 'Send NPY, NPZ, CSV, TSV, MAT (version 6, 7 or 7.3), HDF5 or NWB.';
 
 /** Formats that are recognised in order to say clearly that they are not read. */
 const foreign: { name: string; matches: (head: Buffer) => boolean; remedy: string }[] = [
-  {
-    name: 'an HDF5 file (also MAT 7.3 and NWB)',
-    matches: (head) => head.subarray(0, 8).equals(Buffer.from('894844460d0a1a0a', 'hex')),
-    remedy: FORMATS,
-  },
   {
     name: 'an Arrow or Parquet file',
     matches: (head) =>
@@ -54,6 +49,7 @@ export async function sniffFormat(source: ByteSource): Promise<ReadableFormat> {
   )
     return 'npy';
   if (head.subarray(0, 10).toString('latin1') === 'MATLAB 5.0') return 'mat5';
+  if (await hasHdf5Signature(source, head)) return 'hdf5';
   if (head[0] === 0x50 && head[1] === 0x4b && (head[2] === 3 || head[2] === 5)) {
     if (head.includes('[Content_Types].xml'))
       throw new IntakeRefusal('format-unknown', 'This is an Excel workbook.', 'Export the sheet as CSV.');
@@ -72,4 +68,15 @@ function isBinary(head: Buffer): boolean {
   let controls = 0;
   for (const byte of head) if (byte < 0x20 && byte !== 0x09 && byte !== 0x0a && byte !== 0x0d) controls += 1;
   return controls > Math.max(1, head.length * 0.02);
+}
+
+/** The signature stands at byte 0, or at 512, 1024, 2048 … after a user block. */
+async function hasHdf5Signature(source: ByteSource, head: Buffer): Promise<boolean> {
+  const signature = Buffer.from('894844460d0a1a0a', 'hex');
+  if (head.subarray(0, 8).equals(signature)) return true;
+  for (let at = 512; at + 8 <= source.sizeBytes && at <= 1024 * 1024; at *= 2) {
+    const bytes = at + 8 <= head.length ? head.subarray(at, at + 8) : Buffer.from(await source.read(at, 8));
+    if (bytes.equals(signature)) return true;
+  }
+  return false;
 }

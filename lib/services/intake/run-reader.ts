@@ -1,6 +1,13 @@
 import { fork, type ChildProcess } from 'node:child_process';
 import { readFile } from 'node:fs/promises';
-import type { FromReader, ReaderAnswer, ReaderTask, ToReader } from '@/lib/intake/reader-messages';
+import type { Duplex } from 'node:stream';
+import {
+  syncDescriptor,
+  type FromReader,
+  type ReaderAnswer,
+  type ReaderTask,
+  type ToReader,
+} from '@/lib/intake/reader-messages';
 import { readerEntry } from '@/lib/services/intake/reader-entry';
 import { ReaderLost } from '@/lib/services/intake/reader-lost';
 
@@ -33,7 +40,7 @@ export function runReader<Kind extends ReaderAnswer['kind']>(
     execArgv,
     serialization: 'advanced',
     env: { NODE_ENV: process.env.NODE_ENV ?? 'production' },
-    stdio: ['ignore', 'ignore', 'pipe', 'ipc'],
+    stdio: ['ignore', 'ignore', 'pipe', 'ipc', 'pipe'],
   });
   return new Promise((resolve, reject) => {
     let failure: Error | null = null;
@@ -64,6 +71,9 @@ export function runReader<Kind extends ReaderAnswer['kind']>(
       else if (message.kind === 'failed') failure ??= new ReaderLost('crash', message.message);
       else serve(child, message, options).catch((error: unknown) => kill(error as Error));
     });
+    answerAtOnce(child.stdio[syncDescriptor] as Duplex, options).catch((error: unknown) =>
+      kill(error as Error),
+    );
     child.once('error', kill);
     // 'close' and not 'exit': the last message may still be on its way.
     child.once('close', (code, signal) => {
@@ -96,6 +106,20 @@ async function serve(
     if (options.keep === undefined) throw new Error('this task keeps nothing');
     await options.keep(message.dataHash, message.name, message.bytes);
     send(child, { kind: 'kept', request });
+  }
+}
+
+/** Answers the ranges that the reader asks for while it waits: a line each, answered by its bytes. */
+async function answerAtOnce(pipe: Duplex, options: ReaderOptions): Promise<void> {
+  pipe.on('error', () => undefined); // the reader ended; its 'close' tells the story
+  let left = '';
+  for await (const chunk of pipe as AsyncIterable<Buffer>) {
+    left += chunk.toString('latin1');
+    for (let end = left.indexOf('\n'); end !== -1; end = left.indexOf('\n')) {
+      const [fileId, offset, length] = left.slice(0, end).split(' ');
+      left = left.slice(end + 1);
+      pipe.write(await options.read(fileId, Number(offset), Number(length)));
+    }
   }
 }
 

@@ -4,6 +4,7 @@ import { IntakeRefusal } from '@/lib/intake/intake-refusal';
 import type { MatNode, StoredValues } from '@/lib/intake/readers/mat5/mat5-nodes';
 import { storedTypes } from '@/lib/intake/readers/mat5/mat5-types';
 import { PullBytes } from '@/lib/intake/readers/pull-bytes';
+import { toRowMajor } from '@/lib/intake/readers/to-row-major';
 import type { ReadableArray, ValueChunk } from '@/lib/intake/readers/readable-file';
 
 const MAX_CELLS_LISTED = 100;
@@ -142,26 +143,6 @@ async function* readStack(
   } finally {
     await pull.close();
   }
-}
-
-/** From the first index varying fastest to the last varying fastest. */
-function toRowMajor(values: Float64Array, shape: readonly number[]): Float64Array {
-  const turned = new Float64Array(values.length);
-  const strides = shape.map((_, axis) =>
-    shape.slice(axis + 1).reduce((product, length) => product * length, 1),
-  );
-  const at = new Array<number>(shape.length).fill(0);
-  let to = 0;
-  for (const value of values) {
-    turned[to] = value;
-    for (let axis = 0; axis < shape.length; axis++) {
-      to += strides[axis];
-      if (++at[axis] < shape[axis]) break;
-      to -= strides[axis] * shape[axis];
-      at[axis] = 0;
-    }
-  }
-  return turned;
 }
 
 function exposeSparse(
