@@ -3,6 +3,7 @@ import { mkdirSync, writeFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { parseArgs } from 'node:util';
 import { format, resolveConfig } from 'prettier';
+import { coverageModule } from '@/scripts/calibration/coverage-module';
 import { cells } from '@/scripts/calibration/cells';
 import { calibrationReport } from '@/scripts/calibration/calibration-report';
 import { addChunk, loadResults, saveResults } from '@/scripts/calibration/results';
@@ -10,7 +11,7 @@ import { CHUNK_SEEDS, type Tally } from '@/scripts/calibration/run-chunk';
 
 // npm run test:calibration -- [--sessions 4000] [--minutes 600] [--workers 2] [--only "null trend"]
 // Runs what is missing, cell by cell in turn, keeps every finished chunk in docs/calibration.json, and writes
-// docs/calibration.md from all that was ever run. Stop it whenever you like; the next run goes on from there.
+// docs/calibration.md and the table that captions quote from all that was ever run. Stop it whenever you like; the next run goes on from there.
 const { values } = parseArgs({
   options: {
     sessions: { type: 'string', default: '4000' },
@@ -37,10 +38,10 @@ let savedAt = Date.now();
 async function keep(): Promise<void> {
   saveResults(results);
   const style = await resolveConfig('docs/calibration.md');
-  writeFileSync(
-    'docs/calibration.md',
-    await format(calibrationReport(results), { ...style, parser: 'markdown' }),
-  );
+  const write = async (path: string, text: string, parser: string): Promise<void> =>
+    writeFileSync(path, await format(text, { ...style, parser }));
+  await write('docs/calibration.md', calibrationReport(results), 'markdown');
+  await write('lib/engine/measures/coverage-table.ts', coverageModule(results), 'typescript');
 }
 
 async function work(): Promise<void> {
