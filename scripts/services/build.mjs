@@ -1,9 +1,9 @@
 import { createHash } from 'node:crypto';
 import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { setTimeout as pause } from 'node:timers/promises';
 import { identityOf, isRunning } from './process-identity.mjs';
 import { runStep } from './run-step.mjs';
+import { waitForLock } from './wait-for-lock.mjs';
 
 const sources = [
   'app',
@@ -42,7 +42,10 @@ export async function ensureBuilt({ root, say }) {
   const note = join(users, `${process.pid}.json`);
   writeFileSync(note, JSON.stringify(identityOf(process.pid)));
 
-  const unlock = await lockBuilds(root, say);
+  const unlock = await waitForLock({
+    path: join(root, 'dist', 'building.json'),
+    onWait: () => say('Another build of this checkout is under way; waiting for it …'),
+  });
   try {
     const stamp = join(full, 'built');
     if (!existsSync(stamp)) {
@@ -93,34 +96,6 @@ function hashSources(root) {
   };
   sources.forEach(visit);
   return hash.digest('hex').slice(0, 16);
-}
-
-/** One build at a time in a checkout; whoever comes second waits and then finds it done. */
-async function lockBuilds(root, say) {
-  const path = join(root, 'dist', 'building.json');
-  for (let told = false; ;) {
-    try {
-      writeFileSync(path, JSON.stringify(identityOf(process.pid)), { flag: 'wx' });
-      return () => rmSync(path, { force: true });
-    } catch (error) {
-      if (error.code !== 'EEXIST') throw error;
-    }
-    let holder;
-    try {
-      holder = JSON.parse(readFileSync(path, 'utf8'));
-    } catch {
-      // Being written or removed at this moment; a note that stays broken is older than any write takes.
-      holder =
-        existsSync(path) && Date.now() - statSync(path).mtimeMs < 2_000 ? identityOf(process.pid) : undefined;
-    }
-    if (!isRunning(holder)) {
-      rmSync(path, { force: true });
-      continue;
-    }
-    if (!told) say('Another build of these sources is under way; waiting for it …');
-    told = true;
-    await pause(200);
-  }
 }
 
 function removeUnused(root, hash) {

@@ -77,8 +77,8 @@ if [ ! -e /usr/sbin/policy-rc.d ]; then
   made=1
 fi
 trap '[ -z "$made" ] || rm -f /usr/sbin/policy-rc.d' EXIT
-apt-get -q update
-apt-get -q install -y --no-install-recommends "$@"
+apt-get -q -o DPkg::Lock::Timeout=600 update
+apt-get -q -o DPkg::Lock::Timeout=600 install -y --no-install-recommends "$@"
 if [ -d /run/systemd/system ]; then
   for name in "$@"; do
     case "$name" in
