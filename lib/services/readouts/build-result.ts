@@ -6,10 +6,11 @@ import { buildVerdict } from '@/lib/reports/verdict/build-verdict';
 import type { VerdictNull } from '@/lib/reports/verdict/verdict-facts';
 import { recipeWords } from '@/lib/services/readouts/recipe-words';
 import type { ResolvedRecipe } from '@/lib/services/readouts/resolve-recipe';
+import { toPlain } from '@/lib/services/readouts/to-plain';
 
 /**
  * The result that is kept and shown, from the engine's numbers. Pure.
- * @throws ZodError when a number is NaN or infinite or a part is missing: a fault of ours, never stored
+ * @throws when a number is NaN or infinite or a part is missing: a fault of ours, never stored
  */
 export function buildResult(
   recipe: Recipe,
@@ -45,12 +46,14 @@ export function buildResult(
     smallestEffect: null,
     labelTrends: facts.labelTrends,
   });
-  return resultSchema.parse({
-    ...kept,
-    warnings: [...facts.notes, ...warnings],
-    counts: { ...facts.counts, features: nFeatures },
-    verdict,
-  });
+  return resultSchema.parse(
+    toPlain({
+      ...kept,
+      warnings: [...facts.notes, ...warnings],
+      counts: { ...facts.counts, features: nFeatures },
+      verdict,
+    }),
+  );
 }
 
 function verdictNull(recipe: Recipe, control: ReadoutNumbers['null']): VerdictNull | null {

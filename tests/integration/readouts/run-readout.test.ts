@@ -216,6 +216,46 @@ describe('a readout', () => {
     ).rejects.toMatchObject({ code: 'not-found' });
   });
 
+  it('carries out every control and view by its name in the recipe', async () => {
+    const columns = [{ column: 'speed', term: 'linear' as const }];
+    const controls: RecipeInput['controls'] = [
+      { kind: 'nuisanceOnly', columns },
+      { kind: 'incremental', columns: [{ column: 'block', term: 'category' }] },
+      { kind: 'adjusted', columns: [{ column: 'speed', term: 'spline' }] },
+      { kind: 'totalRate' },
+      { kind: 'rateNormalised' },
+      { kind: 'trialOrder' },
+      { kind: 'window', startMs: 0, endMs: 50 },
+      { kind: 'matched', column: 'speed', draws: 20 },
+      { kind: 'breakCorrelations', scope: 'train' },
+      { kind: 'generalise', column: 'block', train: ['b0', 'b1'], test: ['b2', 'b3'] },
+      { kind: 'injection', sizes: [0.2], draws: 2 },
+    ];
+    const views: RecipeInput['views'] = [
+      { kind: 'timeCourse', widthMs: 50, stepMs: 50 },
+      { kind: 'temporalGeneralisation', widthMs: 50, stepMs: 50 },
+      { kind: 'populationSize', sizes: [4, 8], draws: 3 },
+      { kind: 'learning', sizes: [60, 100], draws: 2 },
+      { kind: 'singleUnits' },
+      { kind: 'weights' },
+    ];
+    const { id } = await start({
+      label: 'fraction',
+      window: { startMs: 50, endMs: 200 },
+      null: { kind: 'free', draws: 50 },
+      controls,
+      views,
+    });
+    const done = await atRest(id);
+    expect(done.problems).toEqual([]);
+    const result = done.result!;
+    expect(result.controls.map(({ kind }) => kind)).toEqual(controls.map(({ kind }) => kind));
+    for (const { sentence, question } of result.controls)
+      expect(`${question} ${sentence}`).toMatch(/\w+\?? .*\.$/s);
+    expect(result.views.map(({ kind }) => kind)).toEqual(views.map(({ kind }) => kind));
+    readoutSchema.parse(done);
+  });
+
   it('is estimated without being made', async () => {
     const estimate = await estimateReadout(ctx(), {
       sessionId: made.sessionId,

@@ -4,7 +4,7 @@ import { setTimeout as sleep } from 'node:timers/promises';
 export async function until<T>(
   what: string,
   ask: () => Promise<T>,
-  limitMs = 20_000,
+  limitMs = 45_000,
 ): Promise<NonNullable<T>> {
   const giveUpAt = Date.now() + limitMs;
   for (;;) {
