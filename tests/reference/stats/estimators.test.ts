@@ -111,6 +111,44 @@ describe("ridge on R's longley (MASS 7.3-58.2, lm.ridge's documentation example)
   });
 });
 
+describe('ridge on the diabetes data (Efron et al., Ann. Stat. 2004; scikit-learn 1.2.1 of Debian 12)', () => {
+  // scikit-learn scales its columns to mean 0 and sum of squares 1 before the fit.
+  const table = checkTable('diabetes.csv');
+  const scaled = Array.from({ length: 10 }, (_, j) => {
+    const column = table.map((row) => row[j]);
+    const centre = column.reduce((a, b) => a + b) / column.length;
+    const size = Math.sqrt(column.length) * sdOf(column);
+    return column.map((v) => (v - centre) / size);
+  });
+  const x = table.map((_, i) => scaled.map((column) => column[i]));
+  const y = table.map((row) => row[10]);
+  const { expected } = check<object, Record<string, number> & Record<string, number[]>>('ridge-diabetes');
+  const r2 = (estimator: EstimatorSpec): number => {
+    const [fitted] = fitRows(x, [y], x, estimator, 'none').predicted;
+    return (
+      1 -
+      squares(y, fitted) /
+        squares(
+          y,
+          y.map(() => y.reduce((a, b) => a + b) / y.length),
+        )
+    );
+  };
+  it('coefficients and intercept at penalty 1, and of least squares', () => {
+    const found = coefficients(x, y, ridge(1), 'none');
+    expect(digits(found[0], expected.intercept)).toBeGreaterThan(8);
+    expect(leastDigits(found.slice(1), expected['coef(alpha=1)'])).toBeGreaterThan(8);
+    expect(
+      leastDigits(coefficients(x, y, leastSquares, 'none').slice(1), expected['coef(0)']),
+    ).toBeGreaterThan(8);
+  });
+  it('R² at penalties 1, .1 and 0', () => {
+    expect(r2(ridge(1))).toBeCloseTo(expected['R2(1)'], 9);
+    expect(r2(ridge(0.1))).toBeCloseTo(expected['R2(.1)'], 9);
+    expect(r2(leastSquares)).toBeCloseTo(expected['R2(0)'], 9);
+  });
+});
+
 describe('ridge on attitude, all 30 rows, z-scored with 1/n (Hastie, Tibshirani & Friedman eq. 3.50; Haufe et al. 2014)', () => {
   const table = checkTable('attitude.csv');
   const [x, y] = [table.map((row) => row.slice(1)), table.map((row) => row[0])];
