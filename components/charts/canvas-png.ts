@@ -1,3 +1,5 @@
+import { pageGround } from '@/components/charts/page-ground';
+
 /** PNG of a canvas on the page's ground (a canvas itself is transparent). Rejects where the browser makes none. */
 export function canvasPng(canvas: HTMLCanvasElement): Promise<Blob> {
   const copy = document.createElement('canvas');
@@ -5,7 +7,7 @@ export function canvasPng(canvas: HTMLCanvasElement): Promise<Blob> {
   copy.height = canvas.height;
   const context = copy.getContext('2d');
   if (!context) return Promise.reject(new Error('this browser gives no drawing surface'));
-  context.fillStyle = getComputedStyle(document.body).backgroundColor;
+  context.fillStyle = pageGround();
   context.fillRect(0, 0, copy.width, copy.height);
   context.drawImage(canvas, 0, 0);
   return new Promise((resolve, reject) =>

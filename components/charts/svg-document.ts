@@ -1,3 +1,5 @@
+import { pageGround } from '@/components/charts/page-ground';
+
 const copied = [
   'fill',
   'fill-opacity',
@@ -46,7 +48,7 @@ export function svgDocument(drawing: SVGSVGElement): string {
   const ground = document.createElementNS('http://www.w3.org/2000/svg', 'rect');
   ground.setAttribute('width', '100%');
   ground.setAttribute('height', '100%');
-  ground.setAttribute('fill', getComputedStyle(document.body).backgroundColor);
+  ground.setAttribute('fill', pageGround());
   copy.prepend(defs, ground);
   copy.setAttribute('xmlns', 'http://www.w3.org/2000/svg');
   copy.removeAttribute('tabindex');

@@ -185,7 +185,15 @@ export function AttemptLedger({
                 <td role="cell" className="n">
                   {line.p === null ? '' : formatP(line.p)}
                 </td>
-                <td role="cell" className={wordClass(line)} style={{ fontWeight: 400, lineHeight: 1.3 }}>
+                <td
+                  role="cell"
+                  className={wordClass(line)}
+                  style={{
+                    fontWeight: 400,
+                    lineHeight: 1.3,
+                    whiteSpace: line.verdictKind === null ? undefined : 'nowrap',
+                  }}
+                >
                   {numbers(ending(line))}
                 </td>
                 <td role="cell" className="quiet">

@@ -53,10 +53,17 @@ export function ExclusionEntries({
       </li>
       {entries.map(({ item, remaining, stillOut }) => (
         <li key={item.version}>
-          <span className="n">{formatCount(remaining)}</span> <b>{item.reason}</b>{' '}
-          <span className="say">
+          <span className="n">{formatCount(remaining)}</span>{' '}
+          <b>
             {numbers(
-              `${item.kind === 'trial' ? 'trials' : 'units'} ${spellRanges(item.indices)} ${item.action === 'leaveOut' ? 'left out' : 'put back'}, ${item.authorName}, ${formatInstant(item.createdAt)}`,
+              `${formatPlural(item.indices.length, item.kind)} ${item.action === 'leaveOut' ? 'left out' : 'put back'}`,
+            )}
+          </b>{' '}
+          <span className="say">
+            {item.reason}
+            <br />
+            {numbers(
+              `${item.kind}${item.indices.length === 1 ? '' : 's'} ${spellRanges(item.indices)}, ${item.authorName}, ${formatInstant(item.createdAt)}`,
             )}
             {mayExclude && stillOut.length > 0 && returning !== item.version && (
               <>

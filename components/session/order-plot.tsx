@@ -127,7 +127,7 @@ export function OrderPlot({
             title="trial"
             text={(value) => chartNumber(value + 1, 0)}
           />
-          <OrderRing rateHz={rateHz} x={x} y={yRate} top={14} bottom={height - 40} />
+          <OrderRing rateHz={rateHz} x={x} y={yRate} top={19} bottom={height - 40} />
         </svg>
       </OrderCursor>
     </div>
@@ -152,7 +152,7 @@ function OrderRing({
   const value = at === null ? null : rateHz[at];
   return (
     <g data-screen-only="">
-      {range && <path className="inkl" d={`M${x(range[0])} ${top}V${top - 5}H${x(range[1])}V${top}`} />}
+      {range && <path className="inkl" d={`M${x(range[0])} ${top}V${top - 4}H${x(range[1])}V${top}`} />}
       {at !== null && (
         <path
           d={`M${x(at)} ${top}V${bottom}`}

@@ -110,8 +110,7 @@ export function UnitSection({
             {' '}
             By rule: rate at least{' '}
             <input
-              className="pick n"
-              style={{ width: '3.4em' }}
+              className="pick number-pick"
               inputMode="decimal"
               aria-label="Least rate, spikes/s"
               value={minRate}
@@ -119,8 +118,7 @@ export function UnitSection({
             />{' '}
             spikes/s and presence at least{' '}
             <input
-              className="pick n"
-              style={{ width: '3.4em' }}
+              className="pick number-pick"
               inputMode="decimal"
               aria-label="Least presence"
               value={minPresence}

@@ -116,9 +116,9 @@ export async function SessionSheet({
       </Section>
       {session.problems.length > 0 && (
         <Section
-          title="Accepted"
+          title="Checks"
           id="problems"
-          why="Warnings of the intake that somebody accepted, and remarks."
+          why="What the intake found: remarks, and warnings that somebody accepted."
         >
           <ProblemList problems={session.problems} />
         </Section>
