@@ -36,7 +36,7 @@ export function ArraysTable({
   );
   return (
     <>
-      <div className="scroll" tabIndex={0} role="region" aria-label="Arrays found">
+      <div className="scroll" tabIndex={0} role="region" aria-label="Arrays found, table">
         <table className="arrays">
           <caption className="vh">Arrays found</caption>
           <thead>

@@ -36,7 +36,7 @@ export function FirstTrials({
           </figcaption>
         </figure>
       ) : null}
-      <div className="scroll" tabIndex={0} role="region" aria-label="First trials">
+      <div className="scroll" tabIndex={0} role="region" aria-label="First trials, table">
         <table>
           <caption className="vh">First trials</caption>
           <thead>

@@ -7,7 +7,7 @@ const axes: CountsAxis[] = ['trial', 'unit', 'bin'];
 /** The lengths of the used arrays along each axis, and whether they agree. */
 export function LengthsTable({ matched }: { matched: MatchedLengths }) {
   return (
-    <div className="scroll" tabIndex={0} role="region" aria-label="Lengths matched">
+    <div className="scroll" tabIndex={0} role="region" aria-label="Lengths matched, table">
       <table className="agree lengths">
         <caption className="vh">Lengths along each axis</caption>
         <thead>
