@@ -1,5 +1,6 @@
 import type { FactoredFold, Chooser, FoldFit } from '@/lib/engine/crossval/fold-fit';
 import type { FoldSetup } from '@/lib/engine/crossval/fold-setup';
+import { screenPlan, type ScreenPlan } from '@/lib/engine/crossval/screen-plan';
 import { type Candidate, componentCandidate, ridgeCandidate } from '@/lib/engine/estimators/candidates';
 import { closedFormWeights } from '@/lib/engine/estimators/closed-form-weights';
 import { penaltyGrid } from '@/lib/engine/estimators/penalty-grid';
@@ -31,10 +32,15 @@ export function fitFold(setup: FoldSetup, linalg: Linalg): FoldFit {
   if (choice === 'innerFolds' || (choice === 'leaveOneOut' && estimator.kind !== 'ridge')) {
     chooser = { kind: 'inner', folds: innerFits(setup, penalties, outer.scaled, choice, linalg) };
   } else if (choice !== null && outer.fit.candidates.length > 1) {
-    chooser = {
-      kind: 'closedForm',
-      weights: closedFormWeights(outer.fit.factor, outer.fit.base, outer.fit.candidates, choice, linalg),
+    const { factor, base, candidates } = outer.fit;
+    const weights = closedFormWeights(factor, base, candidates, choice, linalg);
+    let screen: ScreenPlan | null | undefined;
+    const makeScreen = (): ScreenPlan | null => {
+      if (screen === undefined)
+        screen = estimator.kind === 'ridge' ? screenPlan(factor, candidates, weights) : null;
+      return screen;
     };
+    chooser = { kind: 'closedForm', weights, screen: makeScreen };
   }
   const fit: FoldFit = { ...outer.fit, chooser, isGrid: choice !== null, p, bytes: 0 };
   fit.bytes = bytesOf(fit);

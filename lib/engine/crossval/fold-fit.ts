@@ -1,3 +1,4 @@
+import type { ScreenPlan } from '@/lib/engine/crossval/screen-plan';
 import type { Candidate } from '@/lib/engine/estimators/candidates';
 import type { SpectralFactor } from '@/lib/engine/estimators/spectral-factor';
 import type { UnpenalisedBase } from '@/lib/engine/estimators/unpenalised-base';
@@ -22,7 +23,12 @@ export interface FactoredFold {
 export type Chooser =
   | { kind: 'fixed' }
   /** Candidate l scores Σᵢ (weights[l][i]·eᵢ)², e its training residuals; null where the score does not exist. */
-  | { kind: 'closedForm'; weights: (Float64Array | null)[] }
+  | {
+      kind: 'closedForm';
+      weights: (Float64Array | null)[];
+      /** Made when first asked for: few labels need none. */
+      screen: () => ScreenPlan | null;
+    }
   /** Pooled squared error over inner folds; `train` and `test` index the outer training trials. */
   | { kind: 'inner'; folds: { train: Int32Array; test: Int32Array; fit: FactoredFold }[] };
 
