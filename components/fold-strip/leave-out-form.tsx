@@ -12,6 +12,7 @@ export function LeaveOutForm({
   kind,
   action,
   indices,
+  takesFocus = true,
   onDone,
   onCancel,
 }: {
@@ -19,6 +20,8 @@ export function LeaveOutForm({
   kind: 'trials' | 'units';
   action: 'leaveOut' | 'putBack';
   indices: readonly number[];
+  /** Whether typing begins here at once; not while more may still be ticked. */
+  takesFocus?: boolean;
   onDone: (reason: string) => void;
   onCancel: () => void;
 }) {
@@ -57,7 +60,7 @@ export function LeaveOutForm({
           value={reason}
           maxLength={2000}
           // Opened by the member's own act; the next thing to do is to type.
-          autoFocus
+          autoFocus={takesFocus}
           className={error ? 'field-err' : undefined}
           aria-invalid={error ? true : undefined}
           aria-describedby={error ? `${id}-err` : undefined}

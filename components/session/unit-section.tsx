@@ -155,6 +155,7 @@ export function UnitSection({
           kind="units"
           action={action}
           indices={indices}
+          takesFocus={false}
           onCancel={() => setChanging(new Set())}
           onDone={(reason) => {
             setDone(
