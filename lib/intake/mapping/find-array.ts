@@ -3,15 +3,24 @@ import { findFile } from '@/lib/intake/mapping/find-file';
 import type { SourceFiles } from '@/lib/intake/mapping/source-files';
 import type { ReadableArray } from '@/lib/intake/readers/readable-file';
 
-/** The array by that path in that file, or a refusal that names both. */
+const FOLDERS = { trial: '/intervals/trials/', unit: '/units/' } as const;
+
+/**
+ * The array by that path in that file, or a refusal that names both. A leading slash may be left out; a column of a
+ * trial or unit table (`table`) may be named without the folder in which NWB keeps that table.
+ */
 export function findArray(
   files: SourceFiles,
   fileId: string,
   path: string,
   role: string,
+  table?: 'trial' | 'unit',
 ): { array: ReadableArray; name: string } {
   const { file, name } = findFile(files, fileId, role);
-  const array = file.arrays.find((one) => one.path === path);
+  const paths = [path, `/${path}`, ...(table === undefined ? [] : [`${FOLDERS[table]}${path}`])];
+  const array = paths
+    .map((wanted) => file.arrays.find((one) => one.path === wanted))
+    .find((one) => one !== undefined);
   if (array === undefined)
     throw new IntakeRefusal(
       'array-not-found',

@@ -4,6 +4,7 @@ import { IntakeRefusal } from '@/lib/intake/intake-refusal';
 import type { CountsBuilder } from '@/lib/intake/mapping/counts-builder';
 import { countsFromArray } from '@/lib/intake/mapping/counts-from-array';
 import { countsFromLong } from '@/lib/intake/mapping/counts-from-long';
+import { countsFromSpikes } from '@/lib/intake/mapping/counts-from-spikes';
 import { countsFromWide } from '@/lib/intake/mapping/counts-from-wide';
 import { findArray } from '@/lib/intake/mapping/find-array';
 import { findFile } from '@/lib/intake/mapping/find-file';
@@ -15,6 +16,7 @@ export async function readCounts(
   files: SourceFiles,
   source: CountsSource,
   tables: { trials: readonly Column[]; units: readonly Column[] },
+  binWidthMs: number,
 ): Promise<{ builder: CountsBuilder; fileName: string; arrayType: string | null }> {
   if ('axes' in source) {
     const { array, name } = findArray(files, source.fileId, source.path, 'the counts');
@@ -22,13 +24,16 @@ export async function readCounts(
     return { builder, fileName: name, arrayType: array.dtype };
   }
   const { file, name } = findFile(files, source.fileId, 'the counts');
-  if ('spikeTimes' in source)
-    throw new IntakeRefusal(
-      'spike-times-format',
-      `${name} holds no spike times.`,
-      'Choose an array of counts.',
-      { file: name },
+  if ('spikeTimes' in source) {
+    const builder = await countsFromSpikes(
+      files,
+      source.fileId,
+      source.spikeTimes,
+      binWidthMs,
+      tables.trials,
     );
+    return { builder, fileName: name, arrayType: null };
+  }
   const table = textTable(file.table, name);
   const builder =
     'wide' in source

@@ -19,6 +19,13 @@ export async function readSession(
   intake: Intake,
 ): Promise<{ data: SessionData | null; read: SessionData | null; problems: Problem[] }> {
   try {
+    const { counts } = intake;
+    if ('spikeTimes' in counts && counts.spikeTimes.startMs !== intake.windowStartMs)
+      throw new IntakeRefusal(
+        'window-start',
+        `The window of the spike times begins at ${counts.spikeTimes.startMs} ms, windowStartMs says ${intake.windowStartMs}.`,
+        'Give both the same value.',
+      );
     const tableTrials = await readTable(files, intake.trials, 'trial');
     const units = intake.units === undefined ? [] : await readTable(files, intake.units, 'unit');
     const stimulus =
@@ -26,10 +33,15 @@ export async function readSession(
         ? undefined
         : await readStimulus(files, intake.stimulus, tableTrials[0].values.length);
     const { trials, labels, remarks } = buildLabels(intake.labels, tableTrials, stimulus);
-    const { builder, fileName, arrayType } = await readCounts(files, intake.counts, {
-      trials: tableTrials,
-      units,
-    });
+    const { builder, fileName, arrayType } = await readCounts(
+      files,
+      intake.counts,
+      {
+        trials: tableTrials,
+        units,
+      },
+      intake.binWidthMs,
+    );
     const [nTrials, nUnits, nBins] = builder.shape;
     const faults = [
       ...builder.problems({

@@ -7,7 +7,7 @@ import type { ColumnWish } from '@/lib/intake/mapping/column-wish';
 import { readTextColumns } from '@/lib/intake/mapping/read-text-columns';
 import { toColumn } from '@/lib/intake/mapping/to-column';
 import type { SourceFiles } from '@/lib/intake/mapping/source-files';
-import type { ReadableArray } from '@/lib/intake/readers/readable-file';
+import type { ReadableArray, ReadableFile } from '@/lib/intake/readers/readable-file';
 
 const MAX_ROWS = 5_000_000;
 
@@ -29,7 +29,7 @@ export async function readTable(
       { file: name },
     );
   const arrays = wishes.map(
-    (wish) => findArray(files, source.fileId, wish.path, `the ${role} column “${wish.name}”`).array,
+    (wish) => findArray(files, source.fileId, wish.path, `the ${role} column “${wish.name}”`, role).array,
   );
   const lengths = arrays.map((array, at) => columnLength(array, wishes[at].name, name));
   lengths.forEach((length, at) => {
@@ -47,6 +47,8 @@ export async function readTable(
   return columns;
 
   function ownColumns(): ColumnWish[] {
+    const inFolder = nwbColumns(file, role);
+    if (inFolder.length > 0) return inFolder;
     if (file.table === undefined)
       throw new IntakeRefusal(
         'columns-unnamed',
@@ -62,6 +64,25 @@ export async function readTable(
         type: array.dtype === 'string' ? ('category' as const) : ('number' as const),
       }));
   }
+}
+
+/** The plain columns of an NWB table: those with one value a row, without the lists of unequal length and their indices. */
+function nwbColumns(file: ReadableFile, role: 'trial' | 'unit'): ColumnWish[] {
+  if (file.format !== 'nwb') return [];
+  const folder = role === 'trial' ? '/intervals/trials/' : '/units/';
+  const own = file.arrays.filter(
+    (array) => array.path.startsWith(folder) && !array.path.slice(folder.length).includes('/'),
+  );
+  const ragged = new Set(
+    own.filter((array) => array.path.endsWith('_index')).map((array) => array.path.slice(0, -6)),
+  );
+  return own
+    .filter((array) => array.shape.length === 1 && !ragged.has(array.path) && !array.path.endsWith('_index'))
+    .map((array) => ({
+      name: array.path.slice(folder.length),
+      path: array.path,
+      type: array.dtype === 'string' ? ('category' as const) : ('number' as const),
+    }));
 }
 
 function toWish([name, source]: [string, NonNullable<TableSource['columns']>[string]]): ColumnWish {

@@ -1,4 +1,5 @@
 import type { CountsAxis, CountsSource, IntakeProposal } from '@/lib/contracts/intake';
+import { columnName, columnRole } from '@/lib/intake/proposal/column-role';
 import { arraysOf, columnLength, longColumns, rowLengths } from '@/lib/intake/proposal/row-lengths';
 import type { OfferedArray, OfferedFile } from '@/lib/intake/proposal/offered-file';
 
@@ -33,11 +34,34 @@ export function proposeCounts(files: readonly OfferedFile[]): CountsProposal {
     ),
     ...long.map((file) => file.name),
   ];
+  const spiking = files.filter((file) =>
+    file.arrays.some((array) => /(?:^|[/.])spike_times_index$/.test(array.path)),
+  );
+  if (options.length === 0 && spiking.length === 1) return proposeSpikes(spiking[0], files);
   if (options.length === 0) return asked('No file holds an array of counts. Which file has them?', []);
   if (options.length > 1) return asked('Which of these are the spike counts?', options);
   if (candidates.length === 0) return proposeLong(long[0], files);
   const array = candidates[0];
   return /\{unit\}/.test(array.path) ? proposeWide(array, files) : proposeAxes(array, files);
+}
+
+/** Spike times need an event and a window, which only a person can name. */
+function proposeSpikes(file: OfferedFile, files: readonly OfferedFile[]): CountsProposal {
+  const lengths = rowLengths([file]);
+  const events = arraysOf(files)
+    .filter((array) => columnRole(array) === 'trial' && /time|onset|start|stop/i.test(columnName(array)))
+    .map(columnName);
+  return {
+    questions: [
+      {
+        field: 'counts.spikeTimes',
+        question: `${file.name} holds spike times. Around which event of the trials, and from when to when, are they to be cut into bins?`,
+        options: events,
+      },
+    ],
+    nTrials: lengths.trial.size === 1 ? [...lengths.trial][0] : null,
+    nUnits: file.arrays.find((array) => /spike_times_index$/.test(array.path))?.shape[0] ?? null,
+  };
 }
 
 /** Two or three axes longer than one, of numbers that can be counts. */

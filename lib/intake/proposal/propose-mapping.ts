@@ -1,5 +1,5 @@
 import type { Intake, IntakeProposal, TableSource } from '@/lib/contracts/intake';
-import { columnRole } from '@/lib/intake/proposal/column-role';
+import { columnName, columnRole } from '@/lib/intake/proposal/column-role';
 import type { OfferedArray, OfferedFile } from '@/lib/intake/proposal/offered-file';
 import { proposeCounts } from '@/lib/intake/proposal/propose-counts';
 import { proposeScalars } from '@/lib/intake/proposal/propose-scalars';
@@ -34,6 +34,12 @@ export function proposeMapping(files: readonly OfferedFile[]): IntakeProposal {
   return { intake, questions };
 }
 
+/** A list of unequal lengths with its index beside it (spike times and alike): no column of one value a row. */
+function isRagged(array: OfferedArray, all: readonly OfferedArray[]): boolean {
+  if (array.path.endsWith('_index')) return true;
+  return all.some((other) => other.fileId === array.fileId && other.path === `${array.path}_index`);
+}
+
 /** The columns of one table: those of the file that has most of the right length and kind. */
 function proposeTable(
   role: 'trial' | 'unit',
@@ -50,6 +56,7 @@ function proposeTable(
         (array) =>
           array.fileId === file.fileId &&
           (length === null || columnLength(array) === length) &&
+          !isRagged(array, columns) &&
           fits(array, file),
       );
       return { file, own };
@@ -75,7 +82,7 @@ function proposeTable(
     return null;
   }
   const sources: ColumnSources = {};
-  for (const array of own) sources[nameOf(array)] = sourceOf(array);
+  for (const array of own) sources[nameOf(array, own)] = sourceOf(array);
   return { fileId: file.fileId, columns: sources };
 
   /** In a set of arrays each is judged by its name; the columns of a text table go together. */
@@ -89,14 +96,18 @@ function proposeTable(
   }
 }
 
-function nameOf(array: OfferedArray): string {
-  return (array.path === '' ? array.fileName.replace(/\.[^.]*$/, '') : array.path).slice(0, 120);
+/** The short name, or the whole path where two columns of the table would share a name. */
+function nameOf(array: OfferedArray, table: readonly OfferedArray[]): string {
+  const name = columnName(array);
+  const isShared = table.some((other) => other !== array && columnName(other) === name);
+  // A text table's own names are kept as they are.
+  return (array.format === 'csv' || isShared ? array.path : name).slice(0, 120);
 }
 
 function sourceOf(array: OfferedArray): ColumnSources[string] {
   if (array.dtype === 'string') return { path: array.path, type: 'category' };
   const inDegrees = (array.sample ?? []).some((value) => Math.abs(Number(value)) > 7);
-  return CIRCULAR.test(nameOf(array)) && inDegrees
+  return CIRCULAR.test(columnName(array)) && inDegrees
     ? { path: array.path, type: 'circular', periodDeg: 360 }
     : { path: array.path, type: 'number' };
 }

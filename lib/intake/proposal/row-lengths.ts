@@ -21,8 +21,13 @@ export function arraysOf(files: readonly OfferedFile[]): OfferedArray[] {
 export function rowLengths(files: readonly OfferedFile[]): Record<'trial' | 'unit' | 'bin', Set<number>> {
   const lengths = { trial: new Set<number>(), unit: new Set<number>(), bin: new Set<number>() };
   for (const file of files) {
+    const ragged = new Set(
+      file.arrays.flatMap(({ path }) =>
+        path.endsWith('_index') ? [path, path.slice(0, -'_index'.length)] : [],
+      ),
+    );
     const columns = arraysOf([file]).flatMap((array) => {
-      const length = columnLength(array);
+      const length = ragged.has(array.path) ? null : columnLength(array);
       return length === null ? [] : [{ role: columnRole(array), length }];
     });
     if (file.format === 'csv') {
