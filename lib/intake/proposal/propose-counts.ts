@@ -49,7 +49,12 @@ export function proposeCounts(files: readonly OfferedFile[]): CountsProposal {
 function proposeSpikes(file: OfferedFile, files: readonly OfferedFile[]): CountsProposal {
   const lengths = rowLengths([file]);
   const events = arraysOf(files)
-    .filter((array) => columnRole(array) === 'trial' && /time|onset|start|stop/i.test(columnName(array)))
+    .filter(
+      (array) =>
+        columnLength(array) !== null &&
+        columnRole(array) === 'trial' &&
+        /time|onset|start|stop/i.test(columnName(array)),
+    )
     .map(columnName);
   return {
     questions: [
