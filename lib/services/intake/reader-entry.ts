@@ -10,14 +10,18 @@ export function readerEntry(): { file: string; execArgv: string[] } {
   const heap = '--max-old-space-size=256';
   const holds = (folder: string): boolean =>
     existsSync(path.join(/* turbopackIgnore: true */ folder, 'intake-child.mjs'));
-  // The worker's own bundle first; the web server is told where that is, or it is at the usual place. Tests never take
-  // the usual place, where an older build may lie.
-  const own = path.dirname(process.argv[1] ?? '');
-  const usual = path.resolve(
-    /* turbopackIgnore: true */ root,
-    process.env.OUTFOLD_WORKER_DIST || 'dist/worker',
+  const { VITEST, OUTFOLD_WORKER_DIST, OUTFOLD_DIST } = process.env;
+  // The worker has it beside itself; for the web server it lies in the build's other folder, or in the usual place. Tests
+  // look only beside the running program, because an older build may lie elsewhere.
+  const folders = [path.dirname(process.argv[1] ?? '')];
+  if (!VITEST) {
+    if (OUTFOLD_WORKER_DIST) folders.push(path.resolve(OUTFOLD_WORKER_DIST));
+    if (OUTFOLD_DIST) folders.push(path.resolve(OUTFOLD_DIST, '..', 'worker'));
+    folders.push(path.join(/* turbopackIgnore: true */ root, 'dist', 'worker'));
+  }
+  const folder = folders.find((one) =>
+    existsSync(path.join(/* turbopackIgnore: true */ one, 'intake-child.mjs')),
   );
-  const folder = holds(own) ? own : !process.env.VITEST && holds(usual) ? usual : undefined;
   if (folder === undefined)
     return {
       file: path.join(root, 'worker', 'intake-child', 'intake-child.ts'),
