@@ -1,0 +1,18 @@
+import { parentPort, workerData } from 'node:worker_threads';
+import { portableLinalg } from '@/lib/engine/linalg/portable';
+import { runChunk } from '@/lib/engine/readout/run-chunk';
+import type { ChunkOutput, ReadoutInput, ReadoutPlan } from '@/lib/engine/readout/types';
+import { openNativeLinalg } from '@/lib/native/open-linalg';
+import { boundedCache } from '@/worker/compute/bounded-cache';
+
+/* One of the two threads of a timed run: takes chunk numbers, answers with outputs. */
+const { input, plan } = workerData as { input: ReadoutInput; plan: ReadoutPlan };
+const port = parentPort;
+if (port === null) throw new Error('this file runs as a thread of the benchmark');
+const linalg = openNativeLinalg() ?? portableLinalg;
+const cache = boundedCache(256 * 2 ** 20);
+port.on('message', (id: number) => {
+  const output: ChunkOutput = runChunk(input, plan, plan.chunks[id], linalg, cache);
+  port.postMessage(output);
+});
+port.postMessage(null);
