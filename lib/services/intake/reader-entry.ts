@@ -8,8 +8,6 @@ import path from 'node:path';
 export function readerEntry(): { file: string; execArgv: string[] } {
   const root = process.cwd();
   const heap = '--max-old-space-size=256';
-  const holds = (folder: string): boolean =>
-    existsSync(path.join(/* turbopackIgnore: true */ folder, 'intake-child.mjs'));
   const { VITEST, OUTFOLD_WORKER_DIST, OUTFOLD_DIST } = process.env;
   // The worker has it beside itself; for the web server it lies in the build's other folder, or in the usual place. Tests
   // look only beside the running program, because an older build may lie elsewhere.

@@ -208,6 +208,29 @@ describe('bringing a session in', () => {
     }
   });
 
+  it('gives the same counts hash from MAT and from NWB, whose spikes are cut into bins', async () => {
+    for (const name of ['small.mat', 'small.nwb']) {
+      const made = await insertSession(lab);
+      const file = await upload(made.sessionId, name, fixture(`sessions/${name}`));
+      expect(file, JSON.stringify(file.problems)).toMatchObject({ state: 'readable' });
+      const isNwb = name.endsWith('.nwb');
+      const session = await takeIn(made.sessionId, {
+        counts: isNwb
+          ? { fileId: file.id, spikeTimes: { align: 'start_time', startMs: 0, endMs: 300 } }
+          : { fileId: file.id, path: 'counts', axes: ['trial', 'unit', 'bin'] },
+        binWidthMs: 25,
+        windowStartMs: 0,
+        trials: isNwb
+          ? { fileId: file.id }
+          : { fileId: file.id, columns: { shared_fraction: 'trials.shared_fraction' } },
+        labels: [{ column: 'shared_fraction', kind: 'nominal' }],
+        acceptWarnings: true,
+      });
+      expect(session.state, JSON.stringify(session.problems)).toBe('ready');
+      expect(session.countsHash).toBe(ready.countsHash);
+    }
+  });
+
   it('waits where warnings were not accepted, refuses where a fault stops, and keeps the earlier data', async () => {
     const base: Intake = {
       counts: { fileId: npz.id, path: 'counts', axes: ['trial', 'unit', 'bin'] },
