@@ -10,6 +10,7 @@ import { limitRate, type RateBudget } from './limit-rate';
 import { parseJson } from './parse-json';
 import { problemResponse } from './problem-response';
 import { checkContentLength, readBody } from './read-body';
+import { recordRefusal } from './record-refusal';
 import { requestIdOf } from './request-id';
 import type { Access, BodyKind, HandleInput, ReturnsKind, RouteDefinition } from './route-definition';
 import { toAppError } from './to-app-error';
@@ -62,6 +63,7 @@ export function route<
     } catch (error) {
       const problem = toAppError(error);
       if (problem.status >= 500) log.error({ err: problem.cause ?? problem, requestId }, 'a request failed');
+      if (problem.code === 'forbidden' && ctx !== null) await recordRefusal(ctx, request, problem.message);
       response = problemResponse(problem, requestId);
     }
     log.info(

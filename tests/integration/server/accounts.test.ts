@@ -283,6 +283,24 @@ describe('the audit trail', () => {
     ])
       expect(actions, action).toContain(action);
     expect(JSON.stringify(list)).not.toContain(secondPhrase);
+    const observer = await addMember(lead, 'observer');
+    expect(
+      (
+        await call(invite, {
+          method: 'POST',
+          cookie: await cookieFor(observer),
+          body: { email: 'x@lab.test', role: 'lead' },
+        })
+      ).status,
+    ).toBe(403);
+    const newest = (await json(await call(listAudit, { cookie, path: '/?limit=1' }))) as {
+      items: { action: string }[];
+    };
+    expect(newest.items[0]).toMatchObject({
+      action: 'request.refused',
+      actorId: observer.userId,
+      subjectId: 'POST',
+    });
     expect(await json(await call(verification, { cookie }))).toMatchObject({ holds: true, faults: [] });
   });
 });
