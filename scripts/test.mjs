@@ -30,6 +30,7 @@ function end(code) {
     await services?.stop().catch((error) => console.error(error.message));
     built?.release();
     rmSync(reports, { recursive: true, force: true });
+    if (code === 130) say('Stopped before the end.');
     if (total.skipped > 0) say(`${total.skipped} skipped`);
     say(`${total.passed} passed, ${total.failed} failed`);
     process.exit(code);

@@ -77,7 +77,8 @@ if [ ! -e /usr/sbin/policy-rc.d ]; then
   made=1
 fi
 trap '[ -z "$made" ] || rm -f /usr/sbin/policy-rc.d' EXIT
-apt-get -q -o DPkg::Lock::Timeout=600 update
+# Lists of an earlier update may be enough.
+apt-get -q -o DPkg::Lock::Timeout=600 update || true
 apt-get -q -o DPkg::Lock::Timeout=600 install -y --no-install-recommends "$@"
 if [ -d /run/systemd/system ]; then
   for name in "$@"; do
