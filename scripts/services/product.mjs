@@ -8,7 +8,13 @@ import { join } from 'node:path';
  *   env: Record<string, string>, host: string, port: number }} options
  */
 export async function startProduct({ root, children, built, env, host, port }) {
-  const shared = { ...env, NODE_ENV: 'production', NEXT_TELEMETRY_DISABLED: '1' };
+  const shared = {
+    ...env,
+    NODE_ENV: 'production',
+    NEXT_TELEMETRY_DISABLED: '1',
+    // Both start the reader of uploaded files, which is built beside the worker.
+    OUTFOLD_WORKER_DIST: built.workerFolder,
+  };
   const workerMain = join(root, built.workerFolder, 'main.mjs');
   if (!existsSync(workerMain)) throw new Error(`The build made no ${workerMain}`);
   const address = `http://${host === '0.0.0.0' || host === '::' ? '127.0.0.1' : hostInUrl(host)}:${port}`;
