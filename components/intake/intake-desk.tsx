@@ -64,6 +64,7 @@ export function IntakeDesk({
     nSending,
     outcome,
     problems,
+    isProposing: mapping.isProposing,
     isPreviewOld: mapping.isPreviewOld,
     acceptsWarnings,
     maySubmit,
@@ -124,7 +125,7 @@ export function IntakeDesk({
                 title="Lengths matched"
                 id="lengths"
                 why="Arrays that share an axis must have one length along it."
-                side={outcome.missing.map((sentence) => (
+                side={(mapping.isProposing ? [] : outcome.missing).map((sentence) => (
                   <MarginNote key={sentence} kind="stop" who="to settle">
                     {sentence}
                   </MarginNote>

@@ -17,6 +17,7 @@ export function intakeState(facts: {
   nSending: number;
   outcome: DraftOutcome;
   problems: readonly Problem[];
+  isProposing: boolean;
   isPreviewOld: boolean;
   acceptsWarnings: boolean;
   maySubmit: boolean;
@@ -37,6 +38,7 @@ export function intakeState(facts: {
   if (files.some((file) => file.state === 'reading')) return blocked('A file is still being read.');
   if (!files.some((file) => file.state === 'readable'))
     return blocked('Add the files of this recording: its spike counts and its trial table.');
+  if (facts.isProposing) return blocked('A mapping is being proposed.');
   if (outcome.intake === null)
     return blocked(
       outcome.missing.length === 1

@@ -56,6 +56,23 @@ export function MappingSentence({
           />
         </>
       ) : null}
+      {used.some(({ use }) => use.kind === 'long') ? (
+        <>
+          , in all{' '}
+          {(['trial', 'unit', 'bin'] as const).map((axis, index) => (
+            <span key={axis}>
+              {index === 0 ? '' : index === 2 ? ' and ' : ', '}
+              <NumberPick
+                label={`Number of ${axis}s; empty lets the rows tell`}
+                isOptional
+                value={draft.longShape[axis]}
+                onChange={(value) => onChange({ longShape: { ...draft.longShape, [axis]: value } })}
+              />{' '}
+              {axis}s
+            </span>
+          ))}
+        </>
+      ) : null}
       , bins of{' '}
       <NumberPick
         label="Bin width, ms"

@@ -6,10 +6,12 @@ import { useState } from 'react';
 export function NumberPick({
   label,
   value,
+  isOptional = false,
   onChange,
 }: {
   label: string;
   value: number | null;
+  isOptional?: boolean;
   onChange: (value: number | null) => void;
 }) {
   const [typed, setTyped] = useState<string | null>(null);
@@ -18,7 +20,7 @@ export function NumberPick({
     const number = Number(text.trim().replace('−', '-').replace(',', '.'));
     return text.trim() === '' || !Number.isFinite(number) ? null : number;
   };
-  const isWrong = shown.trim() === '' || read(shown) === null;
+  const isWrong = read(shown) === null && !(isOptional && shown.trim() === '');
   return (
     <input
       type="text"

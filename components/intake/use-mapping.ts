@@ -51,7 +51,8 @@ export function useMapping(sessionId: string, readable: readonly StoredFile[]) {
 
   return {
     questions: openQuestions(proposal.data),
-    isProposing: proposal.isFetching,
+    /** True until the first proposal is there. */
+    isProposing: readable.length > 0 && proposal.data === undefined && proposal.error === null,
     proposalError: proposal.error,
     draft,
     outcome,
@@ -77,7 +78,7 @@ function withUse(draft: IntakeDraft, changed: Record<string, ArrayUse>, key: str
   return uses;
 }
 
-const inTheSentence = new Set(['binWidthMs', 'windowStartMs']);
+const inTheSentence = new Set(['binWidthMs', 'windowStartMs', 'counts.long.shape', 'shape']);
 
 /** What the service asks and the page does not already: the sentence of the mapping has its own fields for bins. */
 function openQuestions(proposal: IntakeProposal | undefined): IntakeProposal['questions'] {

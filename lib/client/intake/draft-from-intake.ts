@@ -40,6 +40,7 @@ export function draftFromIntake(intake: Partial<Intake>, files: readonly StoredF
     for (const role of ['trial', 'unit', 'bin', 'count'] as const)
       uses[arrayKey(counts.fileId, counts.long[role])] = { kind: 'long', role };
 
+  const longShape = counts && 'long' in counts ? counts.long.shape : undefined;
   return {
     uses,
     names,
@@ -52,7 +53,11 @@ export function draftFromIntake(intake: Partial<Intake>, files: readonly StoredF
         : counts && 'long' in counts
           ? counts.long.base
           : undefined,
-    longShape: counts && 'long' in counts ? counts.long.shape : undefined,
+    longShape: {
+      trial: longShape?.[0] ?? null,
+      unit: longShape?.[1] ?? null,
+      bin: longShape?.[2] ?? null,
+    },
     wideTrial: counts && 'wide' in counts ? counts.wide.trial : undefined,
     derivedLabels: (intake.labels ?? []).filter((label) => !('column' in label)),
     stimulus: intake.stimulus,

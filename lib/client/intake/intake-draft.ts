@@ -11,8 +11,8 @@ export interface IntakeDraft {
   windowStartMs: number | null;
   /** Whether the numbers of trials, units and bins in a text table start at 0 or 1; undefined lets the reader tell. */
   base: 0 | 1 | undefined;
-  /** For a table with one row a trial, unit and bin; undefined lets the rows tell. */
-  longShape: [number, number, number] | undefined;
+  /** For a table with one row a trial, unit and bin: how many of each there are; used when all three are given, otherwise the rows tell. */
+  longShape: Record<CountsAxis, number | null>;
   /** The column of a wide table that numbers its trials. */
   wideTrial: string | undefined;
   /** Names given to columns other than their arrays' own, by arrayKey. */

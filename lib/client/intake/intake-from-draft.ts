@@ -83,6 +83,7 @@ function longOf(draft: IntakeDraft, longs: readonly UsedArray[], missing: string
   }
   const { trial, unit, bin, count } = paths;
   if (!trial || !unit || !bin || !count) return null;
+  const shape = longShapeOf(draft, missing);
   return {
     fileId: longs[0].file.id,
     long: {
@@ -90,10 +91,19 @@ function longOf(draft: IntakeDraft, longs: readonly UsedArray[], missing: string
       unit,
       bin,
       count,
-      ...(draft.longShape ? { shape: draft.longShape } : {}),
+      ...(shape ? { shape } : {}),
       ...(draft.base === undefined ? {} : { base: draft.base }),
     },
   };
+}
+
+function longShapeOf({ longShape }: IntakeDraft, missing: string[]): [number, number, number] | null {
+  const numbers = [longShape.trial, longShape.unit, longShape.bin];
+  if (numbers.every((number) => number === null)) return null;
+  const [nTrials, nUnits, nBins] = numbers.map((number) => (Number.isInteger(number) ? number : null));
+  if (nTrials && nUnits && nBins && nTrials > 0 && nUnits > 0 && nBins > 0) return [nTrials, nUnits, nBins];
+  missing.push('Give the numbers of trials, units and bins as whole numbers, all three or none.');
+  return null;
 }
 
 function tableOf(used: readonly UsedArray[], kind: 'trial' | 'unit', missing: string[]): TableSource | null {

@@ -102,6 +102,12 @@ describe('a mapping as a draft', () => {
       fileId: csvId,
       long: { trial: 'trial', unit: 'unit', bin: 'bin', count: 'n' },
     });
+    draft.longShape = { trial: 240, unit: 60, bin: null };
+    expect(intakeFromDraft(draft, [npz, csv]).missing[0]).toMatch(/all three or none/);
+    draft.longShape.bin = 12;
+    expect(intakeFromDraft(draft, [npz, csv]).intake?.counts).toMatchObject({
+      long: { shape: [240, 60, 12] },
+    });
   });
 
   it('drops the bin axis of a matrix', () => {
