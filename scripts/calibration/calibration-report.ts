@@ -25,7 +25,8 @@ export function calibrationReport(results: Results): string {
 
 Written by \`npm run test:calibration\` from simulated sessions run through engine ${results.engineVersion}. Seeds count from 0; every cell
 is meant to have 4,000 sessions. **Run so far: ${fewest} to ${Math.max(0, ...sessions)} sessions a cell** (n in the tables). A rate of .05 over n sessions has a
-standard error of √(.05·.95/n): .0034 at 4,000, .011 at 400. Running the command again goes on where it stopped.
+standard error of √(.05·.95/n): .0034 at 4,000, .011 at 400, .031 at 50: with fewer than about 400 sessions only large failures show.
+Running the command again goes on where it stopped.
 
 ## False positives of the shuffled control at .05
 
