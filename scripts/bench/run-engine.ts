@@ -54,7 +54,9 @@ const isPair = (chunk: ReadoutPlan['chunks'][number]): boolean => chunk.job.kind
 // In W the main window is the first of the time course: it is not counted twice.
 const isTimed = (chunk: ReadoutPlan['chunks'][number]): boolean =>
   !isPair(chunk) && !(windows > 1 && 'task' in chunk.job && chunk.job.task === 0);
+const cpuAt = process.cpuUsage();
 const timed = await run(plan.chunks.filter(isTimed));
+const cpu = process.cpuUsage(cpuAt);
 const rest = await run(plan.chunks.filter((chunk) => !isTimed(chunk)));
 const finishAt = performance.now();
 const numbers = finishReadout(input, plan, [...timed.outputs, ...rest.outputs]);
@@ -62,6 +64,7 @@ const finishMs = performance.now() - finishAt;
 console.log(
   JSON.stringify({
     seconds: (planMs + timed.ms) / 1000,
+    cpuSeconds: (cpu.user + cpu.system) / 1e6,
     wholeSeconds: (planMs + timed.ms + rest.ms + finishMs) / 1000,
     r2: numbers.heldOut.r2,
     exceedances: numbers.null?.exceedances,

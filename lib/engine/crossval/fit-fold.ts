@@ -1,5 +1,6 @@
 import type { FactoredFold, Chooser, FoldFit } from '@/lib/engine/crossval/fold-fit';
-import type { FoldSetup } from '@/lib/engine/crossval/fold-setup';
+import { factorWide } from '@/lib/engine/crossval/factor-wide';
+import type { FoldSetup, WideFeatures } from '@/lib/engine/crossval/fold-setup';
 import { screenPlan, type ScreenPlan } from '@/lib/engine/crossval/screen-plan';
 import { type Candidate, componentCandidate, ridgeCandidate } from '@/lib/engine/estimators/candidates';
 import { closedFormWeights } from '@/lib/engine/estimators/closed-form-weights';
@@ -26,10 +27,16 @@ export function fitFold(setup: FoldSetup, linalg: Linalg): FoldFit {
   const { estimator, train, p } = setup;
   const penalties =
     estimator.kind === 'ridge' ? penaltyGrid(estimator.penalty, train.length, p) : Float64Array.of(0);
-  const outer = factorFold(setup, setup.train, setup.test, penalties, null, linalg);
+  const outer =
+    setup.wide === undefined
+      ? factorFold(setup, setup.train, setup.test, penalties, null, linalg)
+      : { fit: wideFold(setup, setup.wide, penalties, linalg), scaled: null };
   const choice = choiceOf(estimator);
   let chooser: Chooser = { kind: 'fixed' };
-  if (choice === 'innerFolds' || (choice === 'leaveOneOut' && estimator.kind !== 'ridge')) {
+  if (
+    outer.scaled !== null &&
+    (choice === 'innerFolds' || (choice === 'leaveOneOut' && estimator.kind !== 'ridge'))
+  ) {
     chooser = { kind: 'inner', folds: innerFits(setup, penalties, outer.scaled, choice, linalg) };
   } else if (choice !== null && outer.fit.candidates.length > 1) {
     const { factor, base, candidates } = outer.fit;
@@ -45,6 +52,20 @@ export function fitFold(setup: FoldSetup, linalg: Linalg): FoldFit {
   const fit: FoldFit = { ...outer.fit, chooser, isGrid: choice !== null, p, bytes: 0 };
   fit.bytes = bytesOf(fit);
   return fit;
+}
+
+function wideFold(
+  setup: FoldSetup,
+  wide: WideFeatures,
+  penalties: Float64Array,
+  linalg: Linalg,
+): FactoredFold {
+  const found = factorWide(setup, wide, penalties[penalties.length - 1], linalg);
+  const freedom = setup.train.length - 1;
+  const candidates = Array.from(penalties, (penalty) =>
+    ridgeCandidate(found.factor, penalty, setup.p, freedom),
+  );
+  return { ...found, base: null, candidates, plsComponents: 0 };
 }
 
 function choiceOf(estimator: EstimatorSpec): 'leaveOneOut' | 'gcv' | 'innerFolds' | null {
@@ -174,7 +195,10 @@ function innerFits(
 function bytesOf(fit: FoldFit): number {
   const one = (f: FactoredFold): number =>
     8 *
-      (f.factor.left.length + f.factor.test.length + (f.factor.directions?.length ?? 0) + 3 * f.kept.length) +
+      (1.5 * f.factor.left.length +
+        f.factor.test.length +
+        (f.factor.directions?.length ?? 0) +
+        3 * f.kept.length) +
     f.candidates.reduce((sum, c) => sum + 16 * c.fit.length, 0);
   const inner = fit.chooser.kind === 'inner' ? fit.chooser.folds.reduce((sum, f) => sum + one(f.fit), 0) : 0;
   const weights =

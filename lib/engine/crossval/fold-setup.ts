@@ -8,10 +8,20 @@ export interface NuisanceDesign {
   test: Float64Array;
 }
 
+/** Features in blocks of columns. Only for ridge in its dual form without nuisance. */
+export interface WideFeatures {
+  /** First and one past the last column of each block. */
+  blocks: { from: number; to: number }[];
+  /** A block's features, rows × (to − from). */
+  features: (block: { from: number; to: number }) => Float64Array;
+}
+
 /** Everything that one fold's fit depends on, apart from the labels. */
 export interface FoldSetup {
-  /** Rows of features, p columns, row-major; `train` and `test` index its rows. */
+  /** Rows of features, p columns, row-major; `train` and `test` index its rows. Empty where `wide` is given. */
   x: Float64Array;
+  /** Many more features than trials: they come in blocks of columns, so that they need not be held at once. */
+  wide?: WideFeatures;
   p: number;
   /** Rows for held-out trials where they differ from `x`. */
   xTest?: Float64Array;

@@ -22,7 +22,7 @@ export interface SpectralFactor {
 }
 
 /** λ/s₁² below which the Gram matrix has lost too many digits and the SVD is used (measured on NIST's Longley and Filip). */
-const SMALLEST_RELATIVE_PENALTY = 1e-7;
+export const SMALLEST_RELATIVE_PENALTY = 1e-7;
 
 /**
  * Factorises a training fold. `smallestPenalty` > 0: an eigen-decomposition of the smaller Gram matrix, or the SVD where
@@ -91,11 +91,26 @@ function dual(
   vectors: Float64Array,
   linalg: Linalg,
 ): SpectralFactor {
+  const cross = new Float64Array(nTest * nTrain);
+  linalg.gemm('none', 'transpose', nTest, nTrain, p, 1, zTest, p, zTrain, p, 0, cross, nTrain);
+  return dualFactor(w, vectors, cross, nTrain, nTest, linalg);
+}
+
+/**
+ * The dual form from the eigen-decomposition of ZZᵀ (values `w` ≥ 0, vectors as rows) and Z_test·Zᵀ (`cross`,
+ * nTest × nTrain). Nothing passed in is changed. Cost 2·nTest·nTrain² flops.
+ */
+export function dualFactor(
+  w: Float64Array,
+  vectors: Float64Array,
+  cross: Float64Array,
+  nTrain: number,
+  nTest: number,
+  linalg: Linalg,
+): SpectralFactor {
   const r = nTrain;
   const left = new Float64Array(nTrain * r);
   for (let j = 0; j < r; j++) for (let i = 0; i < nTrain; i++) left[i * r + j] = vectors[j * nTrain + i];
-  const cross = new Float64Array(nTest * nTrain);
-  linalg.gemm('none', 'transpose', nTest, nTrain, p, 1, zTest, p, zTrain, p, 0, cross, nTrain);
   const test = new Float64Array(nTest * r);
   linalg.gemm('none', 'none', nTest, r, nTrain, 1, cross, nTrain, left, r, 0, test, r);
   return { kind: 'dual', nTrain, nTest, r, left, test, w, directions: null };

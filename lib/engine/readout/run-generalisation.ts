@@ -40,7 +40,15 @@ export function runGeneralisation(
   const intercepts = new Float64Array(nTrained);
   let mean = 0;
   for (let i = 0; i < nTrained; i++) {
-    const setup = taskSetup(input, plan, taskOf(job.from + i), split, cache, [split.repeat, split.fold]);
+    const setup = taskSetup(
+      input,
+      plan,
+      taskOf(job.from + i),
+      split,
+      cache,
+      [split.repeat, split.fold],
+      true,
+    );
     const fit = fitFold({ ...setup, keepsScaled: true }, linalg);
     const evaluated = evaluateLabels(fit, yTrain, 1, linalg);
     if (i === 0) weights = new Float64Array(fit.p * nTrained);

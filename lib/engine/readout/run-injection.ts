@@ -155,7 +155,7 @@ function sessionR2(
   const error = Array.from({ length: set.nRepeats }, () => new Float64Array(m));
   const baseline = Array.from({ length: set.nRepeats }, () => new Float64Array(m));
   for (const split of set.splits) {
-    const setup = { ...taskSetup(input, plan, task, split, cache, [split.repeat, split.fold]), x, p };
+    const setup = { ...taskSetup(input, plan, task, split, cache, [split.repeat, split.fold], true), x, p };
     const values = runDraws(task, fitFold(setup, linalg), setup.train, setup.test, rows, m, linalg);
     (values.error as Float64Array).forEach((e, b) => (error[split.repeat][b] += e));
     (values.baseline as Float64Array).forEach((e, b) => (baseline[split.repeat][b] += e));

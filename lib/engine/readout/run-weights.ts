@@ -22,7 +22,7 @@ export function runWeights(
 ): ChunkOutput['values'] {
   const task = plan.tasks[job.task];
   const split = plan.foldSets[task.foldSet].splits[job.split];
-  const setup = taskSetup(input, plan, task, split, cache, [split.repeat, split.fold]);
+  const setup = taskSetup(input, plan, task, split, cache, [split.repeat, split.fold], true);
   const fit = fitFold({ ...setup, keepsScaled: true }, linalg);
   const y = taskLabels(input, plan, task);
   const evaluated = evaluateLabels(fit, gatherLabels(y, 1, y.length, setup.train), 1, linalg);

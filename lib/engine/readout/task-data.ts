@@ -1,5 +1,5 @@
 import { labelSampler } from '@/lib/engine/controls/label-sampler';
-import type { FoldSetup, NuisanceDesign } from '@/lib/engine/crossval/fold-setup';
+import type { FoldSetup, NuisanceDesign, WideFeatures } from '@/lib/engine/crossval/fold-setup';
 import { unpenalisedBase } from '@/lib/engine/estimators/unpenalised-base';
 import { breakCorrelations } from '@/lib/engine/features/break-correlations';
 import { buildFeatures, type Features } from '@/lib/engine/features/build-features';
@@ -55,7 +55,10 @@ export function taskFeatures(
   return features;
 }
 
-/** What one split of a task is fitted from; `indices` tell inner folds of the same seed apart. */
+/**
+ * What one split of a task is fitted from; `indices` tell inner folds of the same seed apart. Many features come in
+ * blocks unless `isWhole` asks for all of them at once.
+ */
 export function taskSetup(
   input: ReadoutInput,
   plan: ReadoutPlan,
@@ -63,10 +66,15 @@ export function taskSetup(
   split: FoldSplit,
   cache: ChunkCache,
   indices: number[],
+  isWhole = false,
 ): FoldSetup {
   const set = plan.foldSets[task.foldSet];
   const { trials } = set;
-  let features = taskFeatures(input, task.features, trials, task.foldSet, cache);
+  const blocks = isWhole ? null : wideBlocks(input, task, split.train.length, trials.length);
+  let features =
+    blocks === null
+      ? taskFeatures(input, task.features, trials, task.foldSet, cache)
+      : { n: trials.length, p: blocks[blocks.length - 1].to, x: new Float64Array(0), columnsPerUnit: 1 };
   let xTest: Float64Array | undefined;
   if (task.features.breakCorrelations !== undefined) {
     const broken = brokenFeatures(input, set, features, split.repeat, cache, task);
@@ -88,6 +96,7 @@ export function taskSetup(
       : input.estimator;
   return {
     x: features.x,
+    wide: blocks === null ? undefined : wideFeatures(input, task, trials, blocks),
     xTest,
     p: features.p,
     train,
@@ -104,6 +113,50 @@ export function taskSetup(
       const y = Float64Array.from(train, (position) => input.y[trials[position]]);
       const own = Int32Array.from(train, (position) => trials[position]);
       return innerAssignment(y, own, input.folds, innerFolds(estimator), input.seed, ...indices);
+    },
+  };
+}
+
+/** Features times trials above which they are worked on in blocks, and features in a block. */
+const WIDE_NUMBERS = 4e6;
+const BLOCK_FEATURES = 2000;
+
+/** Blocks of features where a task has many more of them than trials and its fit can be summed over them; else null. */
+function wideBlocks(
+  input: ReadoutInput,
+  task: Task,
+  nTrain: number,
+  n: number,
+): { from: number; to: number }[] | null {
+  const { features, design } = task;
+  const { estimator } = input;
+  if (estimator.kind !== 'ridge' || design.kind !== 'plain' || features.breakCorrelations !== undefined)
+    return null;
+  if ('choose' in estimator.penalty && estimator.penalty.choose === 'innerFolds') return null;
+  if ((features.kind !== 'windowMean' && features.kind !== 'bins') || !('all' in features.units)) return null;
+  const width = Math.round((features.window.endMs - features.window.startMs) / input.binWidthMs);
+  const perUnit = features.kind === 'bins' ? width : 1;
+  const p = input.unitIndex.length * perUnit;
+  if (p < 2 * nTrain || n * p < WIDE_NUMBERS) return null;
+  const step = Math.max(1, Math.floor(BLOCK_FEATURES / perUnit)) * perUnit;
+  return Array.from({ length: Math.ceil(p / step) }, (_, i) => ({
+    from: i * step,
+    to: Math.min(p, (i + 1) * step),
+  }));
+}
+
+function wideFeatures(
+  input: ReadoutInput,
+  task: Task,
+  trials: Int32Array,
+  blocks: { from: number; to: number }[],
+): WideFeatures {
+  const perUnit = blocks[blocks.length - 1].to / input.unitIndex.length;
+  return {
+    blocks,
+    features: ({ from, to }) => {
+      const unitIndex = input.unitIndex.subarray(from / perUnit, to / perUnit);
+      return buildFeatures({ ...input, unitIndex }, trials, task.features).x;
     },
   };
 }
