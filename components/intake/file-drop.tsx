@@ -21,13 +21,19 @@ export function FileDrop({
     disabled: isOff,
   });
   const zone = isOff ? null : (
-    <div className={isDragActive ? 'drop over' : 'drop'}>
+    <>
       <input {...getInputProps({ 'aria-label': 'Files to add' })} />
-      <Button kind="plain" onClick={open}>
-        Add files
-      </Button>
-      <span>or drop them anywhere on this page. NPY, NPZ, CSV or TSV; recognised by content.</span>
+      <div className={isDragActive ? 'drop over' : 'drop'}>
+        <Button kind="plain" onClick={open}>
+          Add files
+        </Button>
+        <span>or drop them anywhere on this page. NPY, NPZ, CSV or TSV; recognised by content.</span>
+      </div>
+    </>
+  );
+  return (
+    <div {...getRootProps({ role: undefined, tabIndex: undefined, className: 'sheet-drop' })}>
+      {children({ zone })}
     </div>
   );
-  return <div {...getRootProps({ role: undefined, tabIndex: undefined })}>{children({ zone })}</div>;
 }
