@@ -2,7 +2,6 @@ import Link from 'next/link';
 import { numbers } from '@/components/ui/numbers';
 import { ProblemList } from '@/components/ui/problem-list';
 import type { Readout } from '@/lib/contracts/readout';
-import { formatCount } from '@/lib/format/format-count';
 import { formatInstant } from '@/lib/format/format-instant';
 
 /** A readout without a result: failed or cancelled, why, and the next step. It stays in the ledger. */
@@ -11,7 +10,7 @@ export function ReadoutEnded({ readout, mayRepeat }: { readout: Readout; mayRepe
   const failed = readout.state === 'failed';
   const at =
     progress && progress.total > 0
-      ? ` at ${formatCount(progress.done)} of ${formatCount(progress.total)} (${progress.phase})`
+      ? ` after ${Math.floor((100 * progress.done) / progress.total)} % of its work (${progress.phase})`
       : '';
   return (
     <div>

@@ -8,7 +8,6 @@ import { ApiError } from '@/lib/client/api-error';
 import { requestJson } from '@/lib/client/request-json';
 import { useLiveEvents } from '@/lib/client/use-live-events';
 import { readoutSchema, type Progress as ProgressState, type ReadoutState } from '@/lib/contracts/readout';
-import { formatCount } from '@/lib/format/format-count';
 import { formatDuration } from '@/lib/format/format-duration';
 
 /**
@@ -87,7 +86,7 @@ export function ReadoutRunning({
     : waits
       ? 'Nothing has been computed yet.'
       : progress
-        ? `${progress.phase}: ${formatCount(progress.done)} of ${formatCount(progress.total)} done.`
+        ? `${progress.phase}; ${Math.floor(100 * (share ?? 0))} % of all the work is done.`
         : 'Reading the session’s counts.';
   const time = [
     elapsed === null ? '' : `${formatDuration(Math.max(1, Math.round(elapsed)))} since it was asked for`,

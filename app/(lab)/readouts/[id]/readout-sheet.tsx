@@ -3,6 +3,8 @@ import { readDrawings } from '@/app/(lab)/readouts/[id]/read-readout';
 import { TrialCursorProvider } from '@/components/charts/trial-cursor';
 import { FoldStrip } from '@/components/fold-strip/fold-strip';
 import type { StripData } from '@/components/fold-strip/strip-data';
+import { controlNumbers } from '@/components/readout/control-numbers';
+import { ControlsTable } from '@/components/readout/controls-table';
 import { FactsLine } from '@/components/readout/facts-line';
 import { FoldsTable } from '@/components/readout/folds-table';
 import { HeldOutFigure } from '@/components/readout/held-out-figure';
@@ -15,6 +17,8 @@ import { readoutPicture } from '@/components/readout/readout-picture';
 import { ReadoutRecord } from '@/components/readout/readout-record';
 import { TwoIntervals } from '@/components/readout/two-intervals';
 import { VerdictLine } from '@/components/readout/verdict-line';
+import { viewNumbersSchema } from '@/components/readout/view-numbers';
+import { ViewSections } from '@/components/readout/view-sections';
 import { labelWords } from '@/components/recipe/label-words';
 import { nullWords } from '@/components/recipe/null-words';
 import { penaltyWords } from '@/components/recipe/penalty-words';
@@ -83,6 +87,10 @@ export async function ReadoutSheet({
     `Dotted: identity.${repeats > 1 ? ` Drawn for the first of ${repeats} repeats.` : ''}`;
   const labelKind = session.labels.find((label) => label.column === recipe.label)?.kind;
   const nFolds = picture.folds.nFolds;
+  const views = result.views.flatMap((view) => {
+    const parsed = viewNumbersSchema.safeParse(view);
+    return parsed.success ? [parsed.data] : [];
+  });
   const meanLabel =
     picture.trials.reduce((sum, row) => sum + row.label, 0) / Math.max(1, picture.trials.length);
 
@@ -155,6 +163,25 @@ export async function ReadoutSheet({
       >
         <TwoIntervals result={result} />
       </Section>
+      {result.controls.length > 0 && (
+        <Section
+          title="Controls"
+          id="controls"
+          why="What else could have made this number? Each question opens its own plot."
+        >
+          <ControlsTable
+            controls={result.controls.map(controlNumbers)}
+            scheme={nullWords(recipe.null)}
+            fileName={fileName}
+          />
+        </Section>
+      )}
+      <ViewSections
+        views={views}
+        window={recipe.window}
+        draws={result.null?.draws ?? 0}
+        fileName={fileName}
+      />
       {result.perLevel.length > 1 && (
         <Section title="How true" id="levels" why="Is it biased at the ends of the scale?">
           <div className="figs" style={{ gridTemplateColumns: 'minmax(0, 1fr) minmax(0, 1fr)' }}>
