@@ -72,6 +72,7 @@ async function inspect(file: FileRow, stopping: AbortSignal): Promise<Inspection
         read: (_fileId, offset, length) => objectStore().getRange(file.object_key, offset, length),
         maxSeconds: readerSeconds(file.size_bytes),
         abort: stopping,
+        keepReady: true,
       },
     );
     return inspection;

@@ -116,6 +116,7 @@ async function read(row: IntakeRow, abort: AbortSignal): Promise<IntakeOutcome> 
           ),
         maxSeconds: 2 * readerSeconds(sizeBytes),
         abort,
+        keepReady: true,
       },
     );
     return outcome;

@@ -1,4 +1,4 @@
-import { fork, type ChildProcess } from 'node:child_process';
+import type { ChildProcess } from 'node:child_process';
 import { readFile } from 'node:fs/promises';
 import type { Duplex } from 'node:stream';
 import {
@@ -8,8 +8,8 @@ import {
   type ReaderTask,
   type ToReader,
 } from '@/lib/intake/reader-messages';
-import { readerEntry } from '@/lib/services/intake/reader-entry';
 import { ReaderLost } from '@/lib/services/intake/reader-lost';
+import { keepReaderReady, takeReader } from '@/lib/services/intake/reader-process';
 
 export interface ReaderOptions {
   /** Bytes of one of the task's files. */
@@ -19,6 +19,8 @@ export interface ReaderOptions {
   maxSeconds: number;
   maxBytes?: number;
   abort?: AbortSignal;
+  /** Starts the next process ahead; for the worker, which has many tasks. */
+  keepReady?: boolean;
 }
 
 const DEFAULT_MAX_BYTES = 512 * 1024 * 1024;
@@ -35,13 +37,8 @@ export function runReader<Kind extends ReaderAnswer['kind']>(
   kind: Kind,
   options: ReaderOptions,
 ): Promise<Extract<ReaderAnswer, { kind: Kind }>> {
-  const { file, execArgv } = readerEntry();
-  const child = fork(file, [], {
-    execArgv,
-    serialization: 'advanced',
-    env: { NODE_ENV: process.env.NODE_ENV ?? 'production' },
-    stdio: ['ignore', 'ignore', 'pipe', 'ipc', 'pipe'],
-  });
+  const child = takeReader();
+  child.channel?.ref();
   return new Promise((resolve, reject) => {
     let failure: Error | null = null;
     let answer: ReaderAnswer | null = null;
@@ -80,6 +77,7 @@ export function runReader<Kind extends ReaderAnswer['kind']>(
       clearTimeout(limit);
       clearInterval(looking);
       options.abort?.removeEventListener('abort', onAbort);
+      if (options.keepReady && !options.abort?.aborted) keepReaderReady();
       if (failure !== null) reject(failure);
       else if (answer?.kind === kind) resolve(answer as Extract<ReaderAnswer, { kind: Kind }>);
       else if (/heap out of memory|allocation failed/i.test(words))
