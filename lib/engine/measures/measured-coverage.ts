@@ -1,5 +1,5 @@
 import { EngineError } from '@/lib/engine/engine-error';
-import { coverageTable } from '@/lib/engine/measures/coverage-table';
+import { type CoverageCell, coverageTable } from '@/lib/engine/measures/coverage-table';
 
 /** What simulation measured of a 95 % interval in the cell most like a readout. */
 export interface MeasuredCoverage {
@@ -31,24 +31,25 @@ export function measuredCoverage(
     throw new EngineError('invalidOption', 'Coverage is looked up for at least one trial and one unit');
   }
   const hasFolds = coverageTable.some((cell) => cell.folds === folds);
-  const wanted = hasFolds ? folds : 'stratified';
-  let least = Infinity;
-  let found: MeasuredCoverage | null = null;
-  for (const cell of coverageTable) {
-    if (cell.folds !== wanted) continue;
-    const distance = Math.hypot(Math.log(nTrials / cell.nTrials), Math.log(nUnits / cell.nUnits));
-    if (distance > least + 1e-12) continue;
-    const covered = interval === 'nested' ? cell.nestedCovered : cell.testTrialCovered;
-    const before = found === null || distance < least - 1e-12 ? null : found;
-    least = Math.min(least, distance);
-    const nSessions = (before?.nSessions ?? 0) + cell.nSessions;
-    found = {
-      coverage: ((before?.coverage ?? 0) * (before?.nSessions ?? 0) + covered) / nSessions,
-      nSessions,
-      nTrials: cell.nTrials,
-      nUnits: cell.nUnits,
-      folds: cell.folds,
-    };
-  }
-  return found;
+  const cells = coverageTable.filter((cell) => cell.folds === (hasFolds ? folds : 'stratified'));
+  const distance = (cell: CoverageCell): number =>
+    Math.hypot(Math.log(nTrials / cell.nTrials), Math.log(nUnits / cell.nUnits));
+  const least = Math.min(...cells.map(distance));
+  const alike = cells.filter((cell) => distance(cell) <= least + 1e-12 && cell.nSessions > 0);
+  const [first] = alike;
+  if (first === undefined) return null;
+  const nSessions = alike.reduce((sum, cell) => sum + cell.nSessions, 0);
+  const covered = alike.reduce(
+    (sum, cell) => sum + (interval === 'nested' ? cell.nestedCovered : cell.testTrialCovered),
+    0,
+  );
+  // Two cells may lie equally far off: the first names what the caption is about.
+  const { nTrials: cellTrials, nUnits: cellUnits } = first;
+  return {
+    coverage: covered / nSessions,
+    nSessions,
+    nTrials: cellTrials,
+    nUnits: cellUnits,
+    folds: first.folds,
+  };
 }
