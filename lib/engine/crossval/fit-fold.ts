@@ -33,12 +33,10 @@ export function fitFold(setup: FoldSetup, linalg: Linalg): FoldFit {
       : { fit: wideFold(setup, setup.wide, penalties, linalg), scaled: null };
   const choice = choiceOf(estimator);
   let chooser: Chooser = { kind: 'fixed' };
-  if (
-    outer.scaled !== null &&
-    (choice === 'innerFolds' || (choice === 'leaveOneOut' && estimator.kind !== 'ridge'))
-  ) {
+  const isInner = choice === 'innerFolds' || (choice === 'leaveOneOut' && estimator.kind !== 'ridge');
+  if (choice !== null && isInner && outer.scaled !== null) {
     chooser = { kind: 'inner', folds: innerFits(setup, penalties, outer.scaled, choice, linalg) };
-  } else if (choice !== null && outer.fit.candidates.length > 1) {
+  } else if (choice !== null && choice !== 'innerFolds' && outer.fit.candidates.length > 1) {
     const { factor, base, candidates } = outer.fit;
     const weights = closedFormWeights(factor, base, candidates, choice, linalg);
     let screen: ScreenPlan | null | undefined;

@@ -119,7 +119,7 @@ export function taskSetup(
 
 /** Features times trials above which they are worked on in blocks, and features in a block. */
 const WIDE_NUMBERS = 4e6;
-const BLOCK_FEATURES = 2000;
+const BLOCK_FEATURES = 1000;
 
 /** Blocks of features where a task has many more of them than trials and its fit can be summed over them; else null. */
 function wideBlocks(
@@ -137,7 +137,7 @@ function wideBlocks(
   const width = Math.round((features.window.endMs - features.window.startMs) / input.binWidthMs);
   const perUnit = features.kind === 'bins' ? width : 1;
   const p = input.unitIndex.length * perUnit;
-  if (p < 2 * nTrain || n * p < WIDE_NUMBERS) return null;
+  if (p < nTrain || n * p < WIDE_NUMBERS) return null;
   const step = Math.max(1, Math.floor(BLOCK_FEATURES / perUnit)) * perUnit;
   return Array.from({ length: Math.ceil(p / step) }, (_, i) => ({
     from: i * step,
