@@ -71,6 +71,11 @@ export function IntakeDesk({
   });
   const { stops, warns, notes } = countSeverities(problems);
   const version = (session.dataVersion ?? 0) + 1;
+  // nothing is left to confirm while the mapping is the one that was just confirmed
+  const isAsConfirmed =
+    session.state === 'ready' &&
+    submit.isSuccess &&
+    JSON.stringify(submit.variables.intake) === JSON.stringify(outcome.intake);
 
   return (
     <FileDrop onFiles={add} isOff={!mayUpload}>
@@ -179,21 +184,23 @@ export function IntakeDesk({
                     To the session
                   </Link>
                 ) : null}
-                <Button
-                  kind={session.state === 'ready' ? 'plain' : 'filled'}
-                  why={state.why ?? (submit.isPending ? 'Being sent.' : null)}
-                  showWhy={false}
-                  onClick={() => {
-                    if (outcome.intake)
-                      submit.mutate({
-                        intake: outcome.intake,
-                        acceptWarnings: acceptsWarnings,
-                        key: randomKey(),
-                      });
-                  }}
-                >
-                  Confirm data version <span className="n">{version}</span>
-                </Button>
+                {isAsConfirmed ? null : (
+                  <Button
+                    kind={session.state === 'ready' ? 'plain' : 'filled'}
+                    why={state.why ?? (submit.isPending ? 'Being sent.' : null)}
+                    showWhy={false}
+                    onClick={() => {
+                      if (outcome.intake)
+                        submit.mutate({
+                          intake: outcome.intake,
+                          acceptWarnings: acceptsWarnings,
+                          key: randomKey(),
+                        });
+                    }}
+                  >
+                    Confirm data version <span className="n">{version}</span>
+                  </Button>
+                )}
               </>
             }
           >
@@ -206,7 +213,7 @@ export function IntakeDesk({
                     : state.words,
               )}
             </p>
-            {warnings.length > 0 && stops === 0 && outcome.intake !== null ? (
+            {warnings.length > 0 && stops === 0 && outcome.intake !== null && !isAsConfirmed ? (
               <label>
                 <input
                   type="checkbox"

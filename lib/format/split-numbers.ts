@@ -4,7 +4,7 @@ const notInsideWord = '(?<![\\w#;&/.])';
 const pattern = new RegExp(
   [
     // p = 0.001, ρ = −0.20: a symbol and its number stay together
-    `${notInsideWord}(?:p|r|ρ|τ²?|λ)${gap}?[=<]${gap}?${number}`,
+    `${notInsideWord}(?:p|r²?|ρ|τ²?|λ)${gap}?[=<]${gap}?${number}`,
     // 0.45 [0.40, 0.50] and an interval alone
     `(?:${notInsideWord}${number}${gap})?\\[${number},${gap}${number}\\]`,
     // plain numbers; R² and P1 stay words, and so does the per cent sign, whose space would be a whole figure wide in mono
@@ -15,9 +15,10 @@ const pattern = new RegExp(
   'g',
 );
 
-/** Ties what must never part at a line end: "R² 0.45", "trial 7", "1 000", "[0.40, 0.50]", "p = 0.001". */
+/** Gives negative numbers a real minus sign, and ties what must never part at a line end: "R² 0.45", "trial 7", "1 000", "[0.40, 0.50]", "p = 0.001". */
 function tie(text: string): string {
   return text
+    .replace(/(^|[\s(\[=,])-(?=\d)/g, '$1−')
     .replace(
       /(^|[\s(,])(r|p|Q|n|R²|I²|trials?|readout|units?|block|fold|bin|line|column|plan) (?=[−+]?\d)/g,
       `$1$2${gap}`,
@@ -25,7 +26,7 @@ function tie(text: string): string {
     .replace(/(\d) (?=\d{3}\b)/g, `$1${gap}`)
     .replace(/(\[[−+]?[\d.]+,) (?=[−+]?[\d.]+\])/g, `$1${gap}`)
     .replace(/(\d) (?=\[[−+]?\d)/g, `$1${gap}`)
-    .replace(/\b([pr]|ρ|λ) (=|<) (?=[−+]?\d)/g, `$1${gap}$2${gap}`)
+    .replace(/(?<!\w)([pr]²?|R²|ρ|λ) (=|<) (?=[−+]?\d)/g, `$1${gap}$2${gap}`)
     .replace(/(\d) (?=(?:%|ms|s|min|h|kB|MB|GB|spikes\/s)(?![\w/]))/g, `$1${gap}`);
 }
 

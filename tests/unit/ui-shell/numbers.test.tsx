@@ -19,6 +19,16 @@ describe('numbers inside sentences', () => {
     expect(inMono('no more (p = 0.001), as said')).toEqual(['p\u00a0=\u00a00.001']);
     expect(splitNumbers('in trial 7 of').map((piece) => piece.text)).toEqual(['in trial\u00a0', '7', ' of']);
   });
+  it('gives negative numbers a real minus sign and leaves ranges alone', () => {
+    expect(inMono('r = -0.25 from -100 to 200, trials 402-438')).toEqual([
+      'r\u00a0=\u00a0−0.25',
+      '−100',
+      '200',
+      '402',
+      '438',
+    ]);
+    expect(inMono('(r² = 0.935)')).toEqual(['r²\u00a0=\u00a00.935']);
+  });
   it('ties thousands and clock times', () => {
     expect(inMono('1 000 shuffles at 18:24, 95 % of them')).toEqual(['1\u00a0000', '18:24', '95']);
   });
