@@ -15,12 +15,14 @@ export function ViewFigure({
   view,
   window,
   draws,
+  isRoot,
   fileName,
 }: {
   view: ViewNumbers;
   window: { startMs: number; endMs: number };
   /** Shuffles that each window or unit was compared with. */
   draws: number;
+  isRoot: boolean;
   fileName: string;
 }) {
   switch (view.kind) {
@@ -123,6 +125,6 @@ export function ViewFigure({
     case 'singleUnits':
       return <SingleUnitsFigure view={view} fileName={fileName} />;
     case 'weights':
-      return <WeightsFigure view={view} fileName={fileName} />;
+      return <WeightsFigure view={view} isRoot={isRoot} fileName={fileName} />;
   }
 }

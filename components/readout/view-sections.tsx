@@ -31,11 +31,13 @@ export function ViewSections({
   views,
   window,
   draws,
+  isRoot,
   fileName,
 }: {
   views: readonly ViewNumbers[];
   window: { startMs: number; endMs: number };
   draws: number;
+  isRoot: boolean;
   fileName: string;
 }) {
   return groups.map((group) => {
@@ -48,7 +50,14 @@ export function ViewSections({
           style={{ gridTemplateColumns: inside.length > 1 ? group.columns : 'minmax(0, 760px)' }}
         >
           {inside.map((view, index) => (
-            <ViewFigure key={index} view={view} window={window} draws={draws} fileName={fileName} />
+            <ViewFigure
+              key={index}
+              view={view}
+              window={window}
+              draws={draws}
+              isRoot={isRoot}
+              fileName={fileName}
+            />
           ))}
         </div>
       </Section>

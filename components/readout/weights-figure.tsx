@@ -6,7 +6,16 @@ import { numbers } from '@/components/ui/numbers';
 import { formatNumber } from '@/lib/format/format-number';
 
 /** Weights beside patterns of the units with the largest patterns. With several bins a unit, its largest bin stands for it. */
-export function WeightsFigure({ view, fileName }: { view: WeightNumbers; fileName: string }) {
+export function WeightsFigure({
+  view,
+  isRoot,
+  fileName,
+}: {
+  view: WeightNumbers;
+  /** Features are square roots of counts, not rates. */
+  isRoot: boolean;
+  fileName: string;
+}) {
   const { featuresPerUnit, weights, pattern } = view;
   const all = view.units.map((unit, index) => {
     let best = index * featuresPerUnit;
@@ -31,7 +40,7 @@ export function WeightsFigure({ view, fileName }: { view: WeightNumbers; fileNam
     <Figure
       title="Weights and patterns"
       caption={numbers(
-        `The ${shown.length} units with the largest patterns (Haufe et al. 2014).${bins} Mean over the ${view.folds} readouts; lines: ±1 SD over them, which share training trials. A weight says how the readout uses a unit; only the pattern says how the unit follows the label. Agreement between folds: weights r ${formatNumber(weights.agreement)}, patterns r ${formatNumber(pattern.agreement)}. Fitted on training trials.`,
+        `The ${shown.length} units with the largest patterns (Haufe et al. 2014).${bins} Mean over the ${view.folds} readouts; lines: ±1 SD over them, which share training trials. A weight says how the readout uses a unit; only the pattern says how the unit follows the label. Agreement between folds: weights r ${formatNumber(weights.agreement)}, patterns r ${formatNumber(pattern.agreement)}. Fitted on training trials.${isRoot ? ' Features are square roots of counts (Anscombe).' : ''}`,
       )}
       columns={[
         { name: 'unit' },

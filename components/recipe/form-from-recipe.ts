@@ -1,6 +1,6 @@
 import type { RecipeFacts } from '@/components/recipe/recipe-facts';
 import type { PenaltyChoice, RecipeFormState } from '@/components/recipe/recipe-form-state';
-import type { Recipe } from '@/lib/contracts/recipe';
+import type { NuisanceColumn, Recipe } from '@/lib/contracts/recipe';
 
 type TrialPart = Partial<Pick<RecipeFormState, 'trials' | 'trialColumn' | 'trialOp' | 'trialValue'>>;
 type UnitPart = Partial<Pick<RecipeFormState, 'units' | 'minRate' | 'minPresence' | 'area' | 'unitList'>>;
@@ -63,6 +63,13 @@ function estimatorPart(estimator: Recipe['estimator']): EstimatorPart {
   };
 }
 
+/** The recipe's own nuisance columns, else those of its first control that names some. */
+function nuisanceColumns(recipe: Recipe): readonly NuisanceColumn[] {
+  if (recipe.nuisance.columns.length > 0) return recipe.nuisance.columns;
+  for (const control of recipe.controls) if ('columns' in control) return control.columns;
+  return [];
+}
+
 /** The form that says what a recipe says; parts that it has no field for are kept as they are. */
 export function formFromRecipe(recipe: Recipe, facts: RecipeFacts, plain: RecipeFormState): RecipeFormState {
   const { folds, null: scheme } = recipe;
@@ -84,8 +91,10 @@ export function formFromRecipe(recipe: Recipe, facts: RecipeFacts, plain: Recipe
     purge: String(folds.purgeTrials ?? plain.purge),
     repeats: String(folds.repeats ?? 1),
     groupColumn: folds.groupColumn ?? plain.groupColumn,
-    nuisance: Object.fromEntries(recipe.nuisance.columns.map(({ column, term }) => [column, term])),
-    handling: recipe.nuisance.handling,
+    nuisance: Object.fromEntries(nuisanceColumns(recipe).map(({ column, term }) => [column, term])),
+    handling: recipe.nuisance.columns.length > 0 ? recipe.nuisance.handling : 'none',
+    controls: recipe.controls,
+    views: recipe.views,
     null: scheme.kind === 'given' || scheme.kind === 'sessions' ? 'kept' : scheme.kind,
     nullColumn: scheme.column ?? plain.nullColumn,
     draws: String(scheme.draws ?? plain.draws),

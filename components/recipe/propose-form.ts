@@ -1,4 +1,6 @@
 import { lagOne } from '@/components/session/lag-one';
+import { proposeControls } from '@/components/recipe/propose-controls';
+import { proposeNuisances } from '@/components/recipe/propose-nuisances';
 import type { RecipeFacts } from '@/components/recipe/recipe-facts';
 import type { RecipeFormState } from '@/components/recipe/recipe-form-state';
 
@@ -39,6 +41,7 @@ export function proposeForm(facts: RecipeFacts, seed: number): Proposal {
   const firstBin = Math.max(0, Math.ceil(-windowStartMs / binWidthMs - 1e-9));
   const constant = blockValues ? isConstantInBlocks(labelValues, blockValues) : false;
   const shuffle = blockValues ? (constant ? 'groups' : 'within') : 'free';
+  const nuisances = proposeNuisances(facts, label);
   const numeric = facts.trialColumns.find((column) => column.name !== label);
   const form: RecipeFormState = {
     label,
@@ -70,11 +73,13 @@ export function proposeForm(facts: RecipeFacts, seed: number): Proposal {
     purge: drifts ? '5' : '0',
     repeats: '1',
     groupColumn: blockColumn ?? numeric?.name ?? '',
-    nuisance: {},
+    nuisance: Object.fromEntries(nuisances.map(({ column, term }) => [column, term])),
     handling: 'none',
     null: shuffle,
     nullColumn: blockColumn ?? numeric?.name ?? '',
     draws: '1000',
+    controls: proposeControls(facts, nuisances),
+    views: [],
     seed: String(seed),
     from: null,
   };

@@ -1,5 +1,6 @@
 import { correlate } from '@/components/session/correlate';
 import { countRecipe } from '@/components/recipe/count-recipe';
+import { labelWords } from '@/components/recipe/label-words';
 import type { RecipeFacts } from '@/components/recipe/recipe-facts';
 import type { RecipeRowKey } from '@/components/recipe/recipe-form-state';
 import { formatCount } from '@/lib/format/format-count';
@@ -55,6 +56,19 @@ export function recipeChecks(recipe: RecipeInput, facts: RecipeFacts): RecipeChe
         'label',
         'warns',
         `The label goes with trial order (r ${formatNumber(order.r)}). Slow drift of the units can then look like the label.`,
+      );
+  }
+
+  const labels = new Set(facts.labels.map((entry) => entry.column));
+  for (const column of facts.trialColumns) {
+    if (column.type === 'category' || column.name === recipe.label || labels.has(column.name)) continue;
+    const { r, n } = correlate(included, onlyNumbers(column.values));
+    // Beyond three standard errors of no correlation, and large enough to matter.
+    if (r !== null && Math.abs(r) > 0.15 && Math.abs(r) > 3 / Math.sqrt(n))
+      add(
+        'nuisance',
+        'warns',
+        `${labelWords(column.name)} goes with the label (r ${formatNumber(r)}): keep it among the nuisances, and ask what the units add to it.`,
       );
   }
 
@@ -173,5 +187,13 @@ export function recipeChecks(recipe: RecipeInput, facts: RecipeFacts): RecipeChe
         `The smallest p that ${formatPlural(draws, 'draw')} allow is ${formatP(1 / (draws + 1))}.`,
       );
   }
+  const controls = recipe.controls ?? [];
+  if (controls.length === 0)
+    add(
+      'controls',
+      'notes',
+      'Without controls the verdict says nothing about what else could have made the number.',
+    );
+  else add('controls', 'fine', `${formatPlural(controls.length, 'control')}, each with its own shuffles.`);
   return checks;
 }

@@ -1,4 +1,4 @@
-import type { NuisanceColumn, Recipe } from '@/lib/contracts/recipe';
+import type { ControlRecipe, NuisanceColumn, Recipe, ViewRecipe } from '@/lib/contracts/recipe';
 
 export type PenaltyChoice = 'leaveOneOut' | 'gcv' | 'innerFolds' | 'value';
 
@@ -38,6 +38,9 @@ export interface RecipeFormState {
   null: 'none' | 'free' | 'within' | 'groups' | 'circularShift' | 'kept';
   nullColumn: string;
   draws: string;
+  /** Numbers that cannot be read yet are NaN here. */
+  controls: readonly ControlRecipe[];
+  views: readonly ViewRecipe[];
   seed: string;
   /** The recipe that this one repeats; parts that the form cannot express are taken from it as they are. */
   from: Recipe | null;

@@ -10,6 +10,7 @@ import type { RecipeFormState, RecipeRowKey } from '@/components/recipe/recipe-f
 import { recipeFromForm } from '@/components/recipe/recipe-from-form';
 import { recipeWords } from '@/components/recipe/recipe-words';
 import { rowOfProblem } from '@/components/recipe/row-of-problem';
+import { ControlsRow } from '@/components/recipe/rows/controls-row';
 import { EstimatorRow } from '@/components/recipe/rows/estimator-row';
 import { FoldsRow } from '@/components/recipe/rows/folds-row';
 import { LabelRow } from '@/components/recipe/rows/label-row';
@@ -18,6 +19,7 @@ import { NuisanceRow } from '@/components/recipe/rows/nuisance-row';
 import { SeedRow } from '@/components/recipe/rows/seed-row';
 import { TrialsRow } from '@/components/recipe/rows/trials-row';
 import { UnitsRow } from '@/components/recipe/rows/units-row';
+import { ViewsRow } from '@/components/recipe/rows/views-row';
 import { WindowRow } from '@/components/recipe/rows/window-row';
 import { RunBar } from '@/components/recipe/run-bar';
 import { useRecipeEstimate } from '@/components/recipe/use-recipe-estimate';
@@ -150,6 +152,8 @@ export function RecipeForm({
       <FoldsRow {...rowProps('folds')} why={proposal.why.folds} />
       <NuisanceRow {...rowProps('nuisance')} />
       <NullRow {...rowProps('null')} why={proposal.why.null} />
+      <ControlsRow {...rowProps('controls')} />
+      <ViewsRow {...rowProps('views')} />
       <SeedRow {...rowProps('seed')} />
       <Section tight title="In words" id="words">
         <p className="lead" style={{ maxWidth: '54em' }}>

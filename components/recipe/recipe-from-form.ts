@@ -11,6 +11,17 @@ export interface FormFault {
   message: string;
 }
 
+/** Whether every number in a structure is finite and every list has something in it. */
+function isReadable(part: unknown): boolean {
+  if (typeof part === 'number') return Number.isFinite(part);
+  if (Array.isArray(part)) return part.every(isReadable);
+  if (part !== null && typeof part === 'object')
+    return Object.values(part).every(
+      (value) => isReadable(value) && !(Array.isArray(value) && value.length === 0),
+    );
+  return true;
+}
+
 /** Turns the form into a recipe, or says of each field that cannot be read what is wrong. */
 export function recipeFromForm(
   form: RecipeFormState,
@@ -187,14 +198,20 @@ export function recipeFromForm(
     transform: form.transform,
     estimator: estimator(),
     folds: folds(),
-    nuisance: {
-      columns: Object.entries(form.nuisance).map(([column, term]) => ({ column, term })),
-      handling: Object.keys(form.nuisance).length > 0 ? form.handling : 'none',
-    },
+    nuisance:
+      form.handling === 'adjust'
+        ? {
+            columns: Object.entries(form.nuisance).map(([column, term]) => ({ column, term })),
+            handling: 'adjust',
+          }
+        : { columns: [], handling: 'none' },
     null: shuffles(),
-    controls: form.from?.controls ?? [],
-    views: form.from?.views ?? [],
+    controls: [...form.controls],
+    views: [...form.views],
     seed: number('seed', 'seed', 'The seed', { low: 0, high: 4_294_967_295, whole: true }),
   };
+  for (const row of ['controls', 'views'] as const)
+    if (!isReadable(form[row]))
+      faults.push({ row, field: row, message: 'A number of this row cannot be read.' });
   return { recipe: faults.length > 0 ? null : recipe, faults };
 }

@@ -14,6 +14,8 @@ const rows: Record<string, RecipeRowKey> = {
   folds: 'folds',
   nuisance: 'nuisance',
   null: 'null',
+  controls: 'controls',
+  views: 'views',
   seed: 'seed',
 };
 

@@ -2,8 +2,9 @@
 import { ChoiceField } from '@/components/recipe/choice-field';
 import { RadioWords } from '@/components/recipe/radio-words';
 import { RecipeRow } from '@/components/recipe/recipe-row';
+import type { RecipeFormState } from '@/components/recipe/recipe-form-state';
 import type { RowProps } from '@/components/recipe/rows/row-props';
-import type { NuisanceColumn } from '@/lib/contracts/recipe';
+import type { ControlRecipe, NuisanceColumn } from '@/lib/contracts/recipe';
 
 const terms: { value: NuisanceColumn['term']; text: string }[] = [
   { value: 'linear', text: 'linear' },
@@ -20,17 +21,26 @@ export function NuisanceRow({ form, set, facts, checks }: RowProps) {
   );
   if (columns.length === 0) return null;
   const chosen = Object.keys(form.nuisance).length > 0;
+  const change = (next: RecipeFormState['nuisance']): void => {
+    const list = Object.entries(next).map(([column, term]) => ({ column, term }));
+    set({
+      nuisance: next,
+      handling: list.length > 0 ? form.handling : 'none',
+      // Controls that ask about nuisances ask about these; without any they have no question.
+      controls: form.controls.flatMap((control): ControlRecipe[] =>
+        !('columns' in control) ? [control] : list.length > 0 ? [{ ...control, columns: list }] : [],
+      ),
+    });
+  };
   const toggle = (name: string, type: string): void => {
-    const next = { ...form.nuisance };
-    if (name in next) delete next[name];
-    else next[name] = type === 'category' ? 'category' : 'linear';
-    set({ nuisance: next, handling: Object.keys(next).length > 0 ? 'adjust' : 'none' });
+    const { [name]: old, ...rest } = form.nuisance;
+    change(old === undefined ? { ...rest, [name]: type === 'category' ? 'category' : 'linear' } : rest);
   };
   return (
     <RecipeRow
       id="nuisance"
       term="Nuisances"
-      because="Columns of this session’s trial table. Taken out of rates and label by coefficients of the training trials alone; a badly measured nuisance leaves a residue."
+      because="Columns of this session’s trial table. Whatever is done with them uses coefficients of the training trials alone; a badly measured nuisance leaves a residue."
       checks={checks}
     >
       <div className="opts">
@@ -57,7 +67,7 @@ export function NuisanceRow({ form, set, facts, checks }: RowProps) {
                     label={`Term of ${name}`}
                     value={term}
                     options={isName ? terms.slice(3) : terms}
-                    onChange={(next) => set({ nuisance: { ...form.nuisance, [name]: next } })}
+                    onChange={(next) => change({ ...form.nuisance, [name]: next })}
                   />
                 </span>
               );
@@ -68,8 +78,8 @@ export function NuisanceRow({ form, set, facts, checks }: RowProps) {
             legend="What is done with the nuisances"
             value={form.handling}
             options={[
+              { value: 'none', text: 'only in the controls' },
               { value: 'adjust', text: 'taken out of units and label first' },
-              { value: 'none', text: 'only named' },
             ]}
             onChange={(handling) => set({ handling })}
           />

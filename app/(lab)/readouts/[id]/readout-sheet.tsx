@@ -180,6 +180,7 @@ export async function ReadoutSheet({
         views={views}
         window={recipe.window}
         draws={result.null?.draws ?? 0}
+        isRoot={recipe.transform === 'sqrt'}
         fileName={fileName}
       />
       {result.perLevel.length > 1 && (

@@ -50,6 +50,17 @@ describe('proposeForm', () => {
     });
     expect(why.folds).toContain('drifts');
   });
+  it('takes speed for a nuisance, neither label nor block, and proposes the controls that ask why', () => {
+    expect(form.nuisance).toEqual({ speed: 'linear' });
+    expect(form.controls.map((control) => control.kind)).toEqual([
+      'window',
+      'nuisanceOnly',
+      'incremental',
+      'totalRate',
+      'trialOrder',
+    ]);
+    expect(form.controls[0]).toEqual({ kind: 'window', startMs: -100, endMs: 0 });
+  });
   it('shuffles whole groups where the label is constant in a block', () => {
     const constant = {
       ...facts,
@@ -106,6 +117,15 @@ describe('recipeFromForm', () => {
       { ...base, folds: { kind: 'leaveOneGroupOut', groupColumn: 'block' } },
       { ...base, null: { kind: 'none' } },
       { ...base, nuisance: { columns: [{ column: 'speed', term: 'spline' }], handling: 'adjust' } },
+      {
+        ...base,
+        controls: [
+          { kind: 'incremental', columns: [{ column: 'speed', term: 'quadratic' }] },
+          { kind: 'generalise', column: 'speed', train: [2, 3], test: [4] },
+          { kind: 'injection', sizes: [0.05, 0.1], draws: 10 },
+        ],
+        views: [{ kind: 'timeCourse', widthMs: 100, stepMs: 50 }, { kind: 'weights' }],
+      },
       { ...base, labelTransform: { kind: 'logit', epsilon: 0.02 } },
     ];
     for (const variant of variants) {
@@ -152,6 +172,34 @@ describe('recipeChecks', () => {
     expect(rowsOf({ estimator: 'leastSquares', features: 'bins' }, 'warns')).toContain('estimator');
     expect(rowsOf({ null: 'none' }, 'warns')).toContain('null');
     expect(rowsOf({}, 'stops')).toEqual([]);
+  });
+  it('stops at a number of a control that cannot be read', () => {
+    const { recipe, faults } = recipeFromForm(
+      {
+        ...form,
+        controls: [{ kind: 'window', startMs: Number.NaN, endMs: 0 }],
+        views: [{ kind: 'learning', sizes: [], draws: 3 }],
+      },
+      facts,
+    );
+    expect(recipe).toBeNull();
+    expect(faults.map((fault) => fault.row)).toEqual(['controls', 'views']);
+  });
+  it('warns of a nuisance that goes with the label', () => {
+    const tied = {
+      ...facts,
+      trialColumns: [
+        ...facts.trialColumns.slice(0, 2),
+        {
+          ...facts.trialColumns[2],
+          values: facts.trialColumns[0].values.map((value) => Number(value) * 3 + 1),
+        },
+      ],
+    };
+    const checks = recipeChecks(recipeFromForm(form, tied).recipe!, tied);
+    expect(checks.find((check) => check.row === 'nuisance')?.message).toContain(
+      'speed goes with the label (r 1.00)',
+    );
   });
   it('warns of a label that goes with trial order', () => {
     const trend = {
