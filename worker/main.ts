@@ -3,7 +3,9 @@ import os from 'node:os';
 import { closeDb } from '@/db/connection';
 import { closeRedis } from '@/lib/jobs/connection';
 import { consume, type Consumer } from '@/lib/jobs/consume';
+import { jobDefinitions } from '@/lib/jobs/definitions';
 import { closeQueues } from '@/lib/jobs/queues';
+import { finishQueue, partQueue } from '@/lib/jobs/readout-flow';
 import { within } from '@/lib/jobs/within';
 import { announceWorker, withdrawWorker } from '@/lib/jobs/worker-presence';
 import { log } from '@/lib/log/log';
@@ -12,9 +14,11 @@ import { sendWaitingMails } from '@/lib/services/mails/send-waiting-mails';
 import { reconcileWork } from '@/lib/services/outbox/reconcile-work';
 import { relayOutbox } from '@/lib/services/outbox/relay-outbox';
 import { computePool } from '@/worker/compute/compute-pool';
+import { finishSpreadReadout } from '@/worker/handlers/finish-readout';
 import { readFile } from '@/worker/handlers/read-file';
 import { runIntake } from '@/worker/handlers/run-intake';
 import { runReadout } from '@/worker/handlers/run-readout';
+import { runReadoutPart } from '@/worker/handlers/run-readout-part';
 import { repeat } from '@/worker/repeat';
 import { workerSettings } from '@/worker/settings';
 
@@ -25,15 +29,26 @@ import { workerSettings } from '@/worker/settings';
 const settings = workerSettings();
 const workerId = `${os.hostname().slice(0, 40)}-${process.pid}-${randomBytes(3).toString('hex')}`;
 const stopping = new AbortController();
-const pool = computePool(settings.WORKER_THREADS);
+const pool = computePool({ threads: settings.WORKER_THREADS, nice: settings.WORKER_NICE });
 
 const consumers: Consumer[] = [
-  consume('run-readout', runReadout(workerId, pool, settings), {
+  consume(jobDefinitions['run-readout'], runReadout(workerId, pool, settings), {
     concurrency: settings.WORKER_READOUTS,
     stopping: stopping.signal,
   }),
-  consume('read-file', readFile, { concurrency: settings.WORKER_READERS, stopping: stopping.signal }),
-  consume('run-intake', runIntake, { concurrency: settings.WORKER_READERS, stopping: stopping.signal }),
+  consume(partQueue, runReadoutPart(pool, settings), { concurrency: 1, stopping: stopping.signal }),
+  consume(finishQueue, finishSpreadReadout(workerId, pool, settings), {
+    concurrency: 1,
+    stopping: stopping.signal,
+  }),
+  consume(jobDefinitions['read-file'], readFile, {
+    concurrency: settings.WORKER_READERS,
+    stopping: stopping.signal,
+  }),
+  consume(jobDefinitions['run-intake'], runIntake, {
+    concurrency: settings.WORKER_READERS,
+    stopping: stopping.signal,
+  }),
 ];
 const loops = [
   repeat('relay the outbox', settings.WORKER_RELAY_MS, async () => void (await relayOutbox())),
@@ -60,7 +75,7 @@ async function stop(signal: string): Promise<void> {
   for (const loop of loops) loop.stop();
   const draining = Promise.all(consumers.map((consumer) => consumer.close(settings.WORKER_DRAIN_MS + 3_000)));
   await within(draining, settings.WORKER_DRAIN_MS, 'Running work').catch(() => undefined);
-  stopping.abort('stopping');
+  stopping.abort(new Error('the worker stops'));
   pool.close();
   await draining;
   await relayOutbox().catch(() => undefined); // what was given back may find another worker

@@ -15,6 +15,8 @@ const settingsSchema = z.object({
     .min(1)
     .max(64)
     .default(Math.max(1, Math.min(2, os.availableParallelism()))),
+  /** How far computing gives way to the web server on the same machine, as nice(1) counts: 0 not at all, 19 wholly. */
+  WORKER_NICE: z.coerce.number().int().min(0).max(19).default(5),
   /** The most that one readout may hold in memory. */
   WORKER_MEMORY_BYTES: z.coerce.number().int().min(1).optional(),
   /** A claim without a heartbeat for this long is lost. */
@@ -30,6 +32,8 @@ const settingsSchema = z.object({
   WORKER_DRAIN_MS: z.coerce.number().int().min(0).max(3_600_000).default(4_000),
   /** Finished pieces are kept for a later attempt when a readout is expected to take longer than this. */
   WORKER_KEEP_PARTS_SECONDS: z.coerce.number().min(0).default(4),
+  /** A readout that is expected to take longer than this is spread over all workers. */
+  WORKER_SPLIT_SECONDS: z.coerce.number().min(0).default(30),
 });
 
 /** The worker's own settings, checked, with defaults from the machine. */

@@ -1,4 +1,6 @@
 import type { Knex } from 'knex';
+import { flowClaimPrefix } from '@/db/repositories/readout-flows';
+import { removeReadoutParts } from '@/db/repositories/readout-parts';
 import type { Problem } from '@/lib/contracts/problem';
 import type { Progress, Provenance, ReadoutResult } from '@/lib/contracts/readout';
 
@@ -94,7 +96,8 @@ export async function releaseReadout(trx: Knex.Transaction, id: string, claim: s
 }
 
 /**
- * Asks for an end. A readout that waits is cancelled at once; one that runs is marked, and its worker ends it.
+ * Asks for an end. A readout that waits, or is spread over jobs, is cancelled at once; one that a worker runs is marked,
+ * and that worker ends it.
  * @returns the state that the row has now, or null when there is no such readout in the lab
  */
 export async function requestCancel(
@@ -103,15 +106,24 @@ export async function requestCancel(
   id: string,
 ): Promise<{ state: string; changed: boolean } | null> {
   const row = await trx('readouts')
-    .select('state', 'cancel_requested')
+    .select('state', 'cancel_requested', 'claimed_by')
     .where({ id, lab_id: labId })
     .forUpdate()
     .first();
   if (!row) return null;
-  if (row.state === 'queued') {
+  const isInFlow = row.state === 'running' && String(row.claimed_by).startsWith(flowClaimPrefix);
+  if (row.state === 'queued' || isInFlow) {
+    // In a flow perhaps no worker is at it just now; those that are lose the claim and stop.
     await trx('readouts')
       .where({ id })
-      .update({ state: 'cancelled', cancel_requested: true, finished_at: now(trx) });
+      .update({
+        state: 'cancelled',
+        cancel_requested: true,
+        claimed_by: null,
+        heartbeat_at: null,
+        finished_at: now(trx),
+      });
+    await removeReadoutParts(trx, id);
     return { state: 'cancelled', changed: true };
   }
   if (row.state !== 'running' || row.cancel_requested) return { state: row.state, changed: false };

@@ -88,8 +88,8 @@ export const nullSchema = z.strictObject({
   column: z.string().optional(),
   draws: z.int().min(1).max(100_000).optional(),
   permutations: permutationsSchema.optional(),
-  /** In a stored recipe whose permutations are too long to repeat: their SHA-256. Never sent by a member. */
-  permutationsSha256: sha256Schema.optional(),
+  /** In a stored recipe whose permutations or label sequences are too long to repeat: their SHA-256. Never sent by a member. */
+  inputsSha256: sha256Schema.optional(),
 });
 export type NullRecipe = z.infer<typeof nullSchema>;
 

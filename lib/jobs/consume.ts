@@ -1,7 +1,7 @@
 import { Worker } from 'bullmq';
 import { log } from '@/lib/log/log';
 import { workerConnection } from '@/lib/jobs/connection';
-import { jobDefinitions, queuePrefix, type JobKind, type JobPayload } from '@/lib/jobs/definitions';
+import { queuePrefix, type JobPayload, type QueueDefinition } from '@/lib/jobs/definitions';
 import { within } from '@/lib/jobs/within';
 
 /** What a handler may know of the job that called it. */
@@ -10,29 +10,28 @@ export interface JobContext {
   /** Aborts when the worker must stop: the handler gives its row back and returns soon. */
   stopping: AbortSignal;
 }
-export type JobHandler = (payload: JobPayload, context: JobContext) => Promise<void>;
+export type JobHandler<P = JobPayload> = (payload: P, context: JobContext) => Promise<void>;
 
 export interface Consumer {
-  kind: JobKind;
   /** Takes no more jobs and waits for those that run, at most `limitMs`. */
   close(limitMs: number): Promise<void>;
 }
 
 /** Starts taking jobs of one kind. At least once: a handler may see the same job twice and must not mind. */
-export function consume(
-  kind: JobKind,
-  handler: JobHandler,
+export function consume<P extends { id: string }>(
+  { queue, payload: schema }: QueueDefinition<P>,
+  handler: JobHandler<P>,
   options: { concurrency: number; stopping: AbortSignal },
 ): Consumer {
   const connection = workerConnection();
   const worker = new Worker(
-    jobDefinitions[kind].queue,
+    queue,
     async (job) => {
-      const payload = jobDefinitions[kind].payload.parse(job.data);
+      const payload = schema.parse(job.data);
       try {
         await handler(payload, { jobId: job.id ?? '', stopping: options.stopping });
       } catch (error) {
-        log.error({ err: error, kind, id: payload.id }, 'a job failed');
+        log.error({ err: error, queue, id: payload.id }, 'a job failed');
         throw error;
       }
     },
@@ -49,9 +48,8 @@ export function consume(
     },
   );
   // Outages and locks lost with Redis's data come here; the row's claim in MariaDB is what counts.
-  worker.on('error', (error) => log.debug({ kind, cause: error.message }, 'queue error'));
+  worker.on('error', (error) => log.debug({ queue, cause: error.message }, 'queue error'));
   return {
-    kind,
     close: async (limitMs) => {
       await within(worker.close(), limitMs, 'Redis').catch(() => undefined);
       connection.disconnect();

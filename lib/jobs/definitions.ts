@@ -15,7 +15,13 @@ export const jobPayloadSchema = z.strictObject({
 });
 export type JobPayload = z.infer<typeof jobPayloadSchema>;
 
-export const jobDefinitions: Record<JobKind, { queue: string; payload: typeof jobPayloadSchema }> = {
+/** A queue and what its jobs carry. */
+export interface QueueDefinition<P> {
+  queue: string;
+  payload: z.ZodType<P>;
+}
+
+export const jobDefinitions: Record<JobKind, QueueDefinition<JobPayload>> = {
   'run-readout': { queue: 'run-readout', payload: jobPayloadSchema },
   'read-file': { queue: 'read-file', payload: jobPayloadSchema },
   'run-intake': { queue: 'run-intake', payload: jobPayloadSchema },

@@ -21,7 +21,7 @@ const send = (message: FromChild): Promise<void> =>
 process.on('disconnect', () => process.kill(process.pid, 'SIGKILL'));
 for (const signal of ['SIGINT', 'SIGTERM'] as const) process.on(signal, () => undefined); // the worker decides
 try {
-  os.setPriority(5); // the web server on the same machine stays quick
+  os.setPriority(Number(process.env.OUTFOLD_COMPUTE_NICE) || 0); // the web server on the same machine stays quick
 } catch {
   // not allowed here: the work is only less polite
 }

@@ -3,12 +3,14 @@ import { fileURLToPath } from 'node:url';
 import { log } from '@/lib/log/log';
 import type { ComputeProgress, ComputeRequest, FromChild, ToChild } from '@/worker/compute/messages';
 
-export type ComputeOutcome = Extract<FromChild, { kind: 'done' | 'problems' }>;
+export type ComputeOutcome = Extract<FromChild, { kind: 'done' | 'problems' | 'split' | 'partDone' }>;
 
 export interface ComputeHooks {
   onProgress(progress: ComputeProgress): void;
-  /** A finished chunk worth keeping. */
-  onPart(chunk: number, payload: Uint8Array): void;
+  /** How many chunks the readout's plan has. */
+  onPlanned?(chunks: number): void;
+  /** A finished chunk worth keeping; the run is over only when it has been kept, or has failed to be. */
+  onPart(chunk: number, payload: Uint8Array): Promise<void>;
 }
 
 export interface ComputePool {
@@ -21,11 +23,13 @@ export interface ComputePool {
   close(): void;
 }
 
+const endings = new Set<FromChild['kind']>(['done', 'problems', 'split', 'partDone']);
+
 /** The compute process was killed or ran out of memory. */
 export class ComputeLost extends Error {}
 
 /** Keeps one process ready ahead of the work: a small readout then waits for nothing. */
-export function computePool(threads: number): ComputePool {
+export function computePool({ threads, nice }: { threads: number; nice: number }): ComputePool {
   const entry = fileURLToPath(new URL('./compute-child.mjs', import.meta.url));
   let spare: ChildProcess | null = null;
   let isClosed = false;
@@ -39,6 +43,7 @@ export function computePool(threads: number): ComputePool {
         OPENBLAS_NUM_THREADS: '1',
         OMP_NUM_THREADS: '1',
         OUTFOLD_COMPUTE_THREADS: String(threads),
+        OUTFOLD_COMPUTE_NICE: String(nice),
       },
     });
     child.once('exit', () => {
@@ -75,18 +80,21 @@ function listen(
     if (abort.aborted) kill();
     abort.addEventListener('abort', kill, { once: true });
     let outcome: ComputeOutcome | Error | null = null;
+    const keeping: Promise<void>[] = [];
     child.on('message', (message: FromChild) => {
       if (abort.aborted) return;
       if (message.kind === 'progress') hooks.onProgress(message.progress);
-      if (message.kind === 'part') hooks.onPart(message.chunk, message.payload);
-      if (message.kind === 'done' || message.kind === 'problems') outcome = message;
+      if (message.kind === 'planned') hooks.onPlanned?.(message.chunks);
+      if (message.kind === 'part') keeping.push(hooks.onPart(message.chunk, message.payload));
+      if (endings.has(message.kind)) outcome = message as ComputeOutcome;
       if (message.kind === 'error')
         outcome = Object.assign(new Error(message.message), { code: message.code ?? undefined });
     });
     child.once('error', (error) => (outcome ??= error));
     // 'close' and not 'exit': what the child said last may still be on its way.
-    child.once('close', (code, signal) => {
+    child.once('close', async (code, signal) => {
       abort.removeEventListener('abort', kill);
+      await Promise.allSettled(keeping);
       if (abort.aborted) reject(abort.reason as Error);
       else if (outcome instanceof Error) reject(outcome);
       else if (outcome) resolve(outcome);

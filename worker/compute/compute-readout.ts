@@ -21,6 +21,7 @@ import { problemFrom } from '@/worker/compute/problem-from';
 import { progressMeter } from '@/worker/compute/progress-meter';
 import { runChunks, type ThreadPool } from '@/worker/compute/run-chunks';
 import { shareArrays } from '@/worker/compute/share-arrays';
+import { partsFor, splitChunks } from '@/worker/compute/split-chunks';
 
 const progressEveryMs = 250;
 /** What one thread may keep of intermediate results, whatever the limit on memory. */
@@ -64,7 +65,14 @@ export async function computeReadout(
     const overfull = memoryProblem(needed, request.maxBytes);
     if (overfull) return await send({ kind: 'problems', problems: [overfull] });
 
+    const { scope } = request;
+    await send({ kind: 'planned', chunks: plan.chunks.length });
+    if (scope.kind === 'all' && scope.splitAboveSeconds !== null) {
+      const parts = partsFor(plan, pool.threads.length, scope.splitAboveSeconds);
+      if (parts > 1) return await send({ kind: 'split', parts });
+    }
     const outputs = await runPlan(request, pool, input, plan, send);
+    if (scope.kind === 'part') return await send({ kind: 'partDone', chunks: outputs.size });
     const { predictions, trialsUsed, ...numbers } = finishReadout(
       input,
       plan,
@@ -109,14 +117,17 @@ async function runPlan(
     const output = decodeOutput(bytes);
     if (chunkOf.has(output.id)) outputs.set(output.id, output);
   }
-  const keepsParts = plan.estimate.seconds / pool.threads.length > request.keepPartsAboveSeconds;
-  const meter = progressMeter(plan.chunks, new Set(outputs.keys()), () => performance.now());
+  const { scope } = request;
+  const chunks = scope.kind === 'part' ? splitChunks(plan.chunks, scope.parts)[scope.part] : plan.chunks;
+  const keepsParts =
+    scope.kind === 'part' || plan.estimate.seconds / pool.threads.length > request.keepPartsAboveSeconds;
+  const meter = progressMeter(chunks, new Set(outputs.keys()), () => performance.now());
   const tell = () => void send({ kind: 'progress', progress: meter.read() });
   const timer = setInterval(tell, progressEveryMs);
   const room = Math.max(0, request.maxBytes - input.counts.byteLength) / pool.threads.length;
   const cacheBytes = Math.min(maxCacheBytes, Math.max(plan.estimate.bytes, room / 2));
   try {
-    await runChunks(pool, input, plan, cacheBytes, outputs, {
+    await runChunks(pool, { input, plan, chunks, cacheBytes }, outputs, {
       begun: (id) => meter.begun(chunkOf.get(id)!),
       finished: (output) => {
         meter.finished(output.id);

@@ -26,7 +26,15 @@ export interface ComputeRequest {
   finished: Uint8Array[];
   /** Send finished chunks back to be kept when the plan expects to take longer than this. */
   keepPartsAboveSeconds: number;
+  scope: ComputeScope;
 }
+
+/** How much of a readout to do. */
+export type ComputeScope =
+  /** All of it, unless it is expected to take longer than `splitAboveSeconds`: then only say into how many parts. */
+  | { kind: 'all'; splitAboveSeconds: number | null }
+  /** One part's chunks; their outputs are sent back and nothing is put together. */
+  | { kind: 'part'; part: number; parts: number };
 
 export interface ComputeProgress {
   /** Work done and all of it, in thousandths. */
@@ -55,6 +63,8 @@ export interface ToChild {
 export type FromChild =
   | { kind: 'ready' }
   | { kind: 'progress'; progress: ComputeProgress }
+  /** How many chunks the plan has. */
+  | { kind: 'planned'; chunks: number }
   | { kind: 'part'; chunk: number; payload: Uint8Array }
   | { kind: 'problems'; problems: Problem[] }
   | {
@@ -67,6 +77,8 @@ export type FromChild =
       predictionsKey: string;
       facts: ComputeFacts;
     }
+  | { kind: 'split'; parts: number }
+  | { kind: 'partDone'; chunks: number }
   | { kind: 'error'; message: string; code: string | null };
 
 /** From a compute child to one of its threads. */

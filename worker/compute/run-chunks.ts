@@ -1,5 +1,5 @@
 import { Worker } from 'node:worker_threads';
-import type { ChunkOutput, ReadoutInput, ReadoutPlan } from '@/lib/engine/readout/types';
+import type { Chunk, ChunkOutput, ReadoutInput, ReadoutPlan } from '@/lib/engine/readout/types';
 import { scheduleChunks } from '@/worker/compute/chunk-schedule';
 import { ComputeFault } from '@/worker/compute/compute-fault';
 import type { FromThread, ToThread } from '@/worker/compute/messages';
@@ -24,18 +24,17 @@ export function openThreads(count: number, entry: URL): ThreadPool {
 }
 
 /**
- * Runs the plan's chunks that `outputs` does not hold yet, each on whichever thread is free, and adds their outputs.
+ * Runs those of `chunks` that `outputs` does not hold yet, each on whichever thread is free, and adds their outputs.
  * @throws ComputeFault with the engine's words when it refuses, Error when a thread dies
  */
 export async function runChunks(
   pool: ThreadPool,
-  input: ReadoutInput,
-  plan: ReadoutPlan,
-  cacheBytes: number,
+  work: { input: ReadoutInput; plan: ReadoutPlan; chunks: readonly Chunk[]; cacheBytes: number },
   outputs: Map<number, ChunkOutput>,
   hooks: { begun(chunkId: number): void; finished(output: ChunkOutput): void },
 ): Promise<void> {
-  const waiting = plan.chunks.filter(({ id }) => !outputs.has(id));
+  const { input, plan, chunks, cacheBytes } = work;
+  const waiting = chunks.filter(({ id }) => !outputs.has(id));
   if (waiting.length === 0) return;
   const schedule = scheduleChunks(waiting);
   let left = waiting.length;

@@ -1,9 +1,11 @@
 import { db } from '@/db/connection';
 import { addToOutbox } from '@/db/repositories/outbox';
+import { listStaleFlows, touchFlow } from '@/db/repositories/readout-flows';
 import { listWaitingWork, releaseStaleWork } from '@/db/repositories/unfinished-work';
 import { inTransaction } from '@/db/transaction';
 import { jobKinds } from '@/lib/jobs/definitions';
 import { enqueue } from '@/lib/jobs/enqueue';
+import { isFlowLive } from '@/lib/jobs/is-flow-live';
 import { isJobLive } from '@/lib/jobs/is-job-live';
 import { log } from '@/lib/log/log';
 
@@ -19,6 +21,9 @@ export interface ReconcileLimits {
  * lost its data. Running it too often, or in several workers at once, does no harm.
  */
 export async function reconcileWork({ staleMs, waitingMs }: ReconcileLimits): Promise<void> {
+  // A flow whose parts wait behind other work has nobody to renew its claim; its jobs in Redis speak for it.
+  for (const { id, attempt, token } of await listStaleFlows(db(), staleMs, 100))
+    if (await isFlowLive(id, attempt)) await touchFlow(db(), id, token);
   for (const kind of jobKinds) {
     const released = await inTransaction(async (trx) => {
       const stale = await releaseStaleWork(trx, kind, staleMs, 100);

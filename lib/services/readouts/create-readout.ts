@@ -81,8 +81,8 @@ function keepRecipe({ recipe, permutations }: PreparedRecipe): {
   const hashOf = (value: Recipe) => createHash('sha256').update(canonicalJson(value)).digest('hex');
   if (!permutations) return { recipe, recipeHash: hashOf(recipe), inputs: null };
   const { permutations: sent, ...scheme } = recipe.null;
-  const permutationsSha256 = hashPermutations(permutations);
-  const brief = { ...recipe, null: { ...scheme, permutationsSha256 } };
+  const inputsSha256 = hashPermutations(permutations);
+  const brief = { ...recipe, null: { ...scheme, inputsSha256 } };
   const recipeHash = hashOf(brief);
   const isInline = Array.isArray(sent);
   if (isInline && permutations.values.length <= maxInlineEntries) return { recipe, recipeHash, inputs: null };

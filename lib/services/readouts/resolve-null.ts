@@ -12,7 +12,7 @@ const fields: Record<Recipe['null']['kind'], string[]> = {
   groups: ['draws', 'column'],
   circularShift: ['draws'],
   sessions: ['draws'],
-  given: ['draws', 'permutations', 'permutationsSha256'],
+  given: ['draws', 'permutations', 'inputsSha256'],
 };
 
 /**

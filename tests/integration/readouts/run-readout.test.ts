@@ -162,7 +162,7 @@ describe('a readout', () => {
     expect(readout.recipe.null).toEqual({
       kind: 'given',
       draws: 150,
-      permutationsSha256: expect.stringMatching(/^[0-9a-f]{64}$/),
+      inputsSha256: expect.stringMatching(/^[0-9a-f]{64}$/),
     });
     const done = await atRest(readout.id);
     expect(done.problems).toEqual([]);

@@ -41,6 +41,7 @@ export function startWorker(folder: string, env: Record<string, string> = {}): W
       WORKER_HEARTBEAT_MS: '200',
       WORKER_RELAY_MS: '200',
       WORKER_DRAIN_MS: '200',
+      WORKER_NICE: '0',
       ...env,
     },
   });

@@ -5,6 +5,7 @@ import { scheduleChunks } from '@/worker/compute/chunk-schedule';
 import { decodeOutput, encodeOutput } from '@/worker/compute/encode-output';
 import { memoryProblem } from '@/worker/compute/memory-problem';
 import { progressMeter } from '@/worker/compute/progress-meter';
+import { partsFor, splitChunks } from '@/worker/compute/split-chunks';
 import { shareArrays } from '@/worker/compute/share-arrays';
 
 const chunk = (id: number, affinity: string, weight = 1): Chunk => ({
@@ -45,6 +46,31 @@ describe('the schedule', () => {
       seen.push(next.id);
     }
     expect(seen.sort((a, b) => a - b)).toEqual(chunks.map(({ id }) => id));
+  });
+});
+
+describe('the parts of a large readout', () => {
+  const chunks = Array.from({ length: 50 }, (_, id) => chunk(id, `g${id % 5}`, 1 + (id % 3)));
+  it('hold every chunk once, in the same way each time, with groups kept together', () => {
+    const split = splitChunks(chunks, 4);
+    expect(
+      split
+        .flat()
+        .map(({ id }) => id)
+        .sort((a, b) => a - b),
+    ).toEqual(chunks.map(({ id }) => id));
+    expect(splitChunks(chunks, 4)).toEqual(split);
+    const weights = split.map((part) => part.reduce((sum, { weight }) => sum + weight, 0));
+    expect(Math.max(...weights) - Math.min(...weights)).toBeLessThan(6);
+    const groupsOf = split.map((part) => new Set(part.map(({ affinity }) => affinity)).size);
+    expect(Math.max(...groupsOf)).toBeLessThan(4);
+  });
+  it('are none where it is not expected to take long', () => {
+    const plan = (seconds: number) => ({ chunks, estimate: { flops: 0, bytes: 0, seconds } });
+    expect(partsFor(plan(60), 2, 30)).toBe(1);
+    expect(partsFor(plan(61), 2, 30)).toBe(4);
+    expect(partsFor(plan(160), 2, 30)).toBe(10);
+    expect(partsFor(plan(1e6), 2, 30)).toBe(50);
   });
 });
 
