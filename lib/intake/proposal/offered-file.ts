@@ -14,3 +14,8 @@ export interface OfferedArray extends ArrayFact {
   fileName: string;
   format: FileFormat;
 }
+
+/** Whether a file of that format is one table, whose columns go together. */
+export function isTable(format: FileFormat): boolean {
+  return format === 'csv' || format === 'arrow' || format === 'parquet' || format === 'json';
+}

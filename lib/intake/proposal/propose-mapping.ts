@@ -1,6 +1,6 @@
 import type { Intake, IntakeProposal, TableSource } from '@/lib/contracts/intake';
 import { columnName, columnRole } from '@/lib/intake/proposal/column-role';
-import type { OfferedArray, OfferedFile } from '@/lib/intake/proposal/offered-file';
+import { isTable, type OfferedArray, type OfferedFile } from '@/lib/intake/proposal/offered-file';
 import { proposeCounts } from '@/lib/intake/proposal/propose-counts';
 import { proposeScalars } from '@/lib/intake/proposal/propose-scalars';
 import { arraysOf, columnLength, isLongTable } from '@/lib/intake/proposal/row-lengths';
@@ -88,7 +88,7 @@ function proposeTable(
   /** In a set of arrays each is judged by its name; the columns of a text table go together. */
   function fits(array: OfferedArray, file: OfferedFile): boolean {
     const said = columnRole(array);
-    if (file.format === 'csv')
+    if (isTable(file.format))
       return role === 'unit'
         ? !columns.some((one) => one.fileId === file.fileId && columnRole(one) === 'trial')
         : true;
@@ -101,7 +101,7 @@ function nameOf(array: OfferedArray, table: readonly OfferedArray[]): string {
   const name = columnName(array);
   const isShared = table.some((other) => other !== array && columnName(other) === name);
   // A text table's own names are kept as they are.
-  return (array.format === 'csv' || isShared ? array.path : name).slice(0, 120);
+  return (isTable(array.format) || isShared ? array.path : name).slice(0, 120);
 }
 
 function sourceOf(array: OfferedArray): ColumnSources[string] {

@@ -1,6 +1,6 @@
 import type { IntakeProposal } from '@/lib/contracts/intake';
 import { arraysOf } from '@/lib/intake/proposal/row-lengths';
-import type { OfferedArray, OfferedFile } from '@/lib/intake/proposal/offered-file';
+import { isTable, type OfferedArray, type OfferedFile } from '@/lib/intake/proposal/offered-file';
 
 type Question = IntakeProposal['questions'][number];
 const WIDTH = /^(?:bin[_ ]?(?:width|size)?|dt)(?:[_ ]?(ms|s|sec|seconds))?$/i;
@@ -14,7 +14,7 @@ export function proposeScalars(files: readonly OfferedFile[]): {
   questions: Question[];
 } {
   const scalars = arraysOf(files).filter(
-    (array) => array.shape.every((length) => length === 1) && array.format !== 'csv',
+    (array) => array.shape.every((length) => length === 1) && !isTable(array.format),
   );
   const questions: Question[] = [];
   const find = (pattern: RegExp, field: string, question: string): number | undefined => {

@@ -1,5 +1,5 @@
 import { columnRole } from '@/lib/intake/proposal/column-role';
-import type { OfferedArray, OfferedFile } from '@/lib/intake/proposal/offered-file';
+import { isTable, type OfferedArray, type OfferedFile } from '@/lib/intake/proposal/offered-file';
 
 /** How many values an array has that could be a column (n, n × 1 or 1 × n); null for anything else and for scalars. */
 export function columnLength(array: { shape: number[] }): number | null {
@@ -30,7 +30,7 @@ export function rowLengths(files: readonly OfferedFile[]): Record<'trial' | 'uni
       const length = ragged.has(array.path) ? null : columnLength(array);
       return length === null ? [] : [{ role: columnRole(array), length }];
     });
-    if (file.format === 'csv') {
+    if (isTable(file.format)) {
       const roles = new Set(columns.map((column) => column.role));
       if (isLongTable(file)) continue;
       // In a table of its own, a unit table is told by naming no trial column.
@@ -56,7 +56,7 @@ export function isLongTable(file: OfferedFile): boolean {
 export function longColumns(
   file: OfferedFile,
 ): { trial: string; unit: string; bin: string; count: string } | null {
-  if (file.format !== 'csv') return null;
+  if (!isTable(file.format)) return null;
   const find = (pattern: RegExp): string | undefined =>
     file.arrays.find((array) => pattern.test(array.path))?.path;
   const trial = find(/^trial(?:[_ ]?(?:id|number))?$/i);

@@ -1,19 +1,13 @@
 import type { ByteSource } from '@/lib/intake/byte-source';
 import { IntakeRefusal } from '@/lib/intake/intake-refusal';
 
-export type ReadableFormat = 'npy' | 'npz' | 'csv' | 'mat5' | 'hdf5';
+export type ReadableFormat = 'npy' | 'npz' | 'csv' | 'mat5' | 'hdf5' | 'arrow' | 'parquet' | 'json';
 
-const FORMATS = 'Send NPY, NPZ, CSV, TSV, MAT (version 6, 7 or 7.3), HDF5 or NWB.';
+const FORMATS =
+  'Send NPY, NPZ, CSV, TSV, MAT (version 6, 7 or 7.3), HDF5, NWB, Arrow, Feather, Parquet or JSON.';
 
 /** Formats that are recognised in order to say clearly that they are not read. */
 const foreign: { name: string; matches: (head: Buffer) => boolean; remedy: string }[] = [
-  {
-    name: 'an Arrow or Parquet file',
-    matches: (head) =>
-      ['ARROW1', 'FEA1'].some((magic) => head.toString('latin1').startsWith(magic)) ||
-      head.subarray(0, 4).toString('latin1') === 'PAR1',
-    remedy: FORMATS,
-  },
   {
     name: 'a gzip archive',
     matches: (head) => head[0] === 0x1f && head[1] === 0x8b,
@@ -49,6 +43,10 @@ export async function sniffFormat(source: ByteSource): Promise<ReadableFormat> {
   )
     return 'npy';
   if (head.subarray(0, 10).toString('latin1') === 'MATLAB 5.0') return 'mat5';
+  const magic = head.toString('latin1', 0, 6);
+  if (magic === 'ARROW1') return 'arrow';
+  if (magic.startsWith('PAR1')) return 'parquet';
+  if (/^(?:\ufeff)?\s*(?:\{\s*["}]|\[\s*[[{"\d\]-])/.test(head.toString('utf8'))) return 'json';
   if (await hasHdf5Signature(source, head)) return 'hdf5';
   if (head[0] === 0x50 && head[1] === 0x4b && (head[2] === 3 || head[2] === 5)) {
     if (head.includes('[Content_Types].xml'))
