@@ -48,4 +48,14 @@ export interface RecipeFormState {
 
 /** Rows of the form; a check belongs to one of them. */
 export type RecipeRowKey =
-  'label' | 'trials' | 'units' | 'window' | 'estimator' | 'folds' | 'nuisance' | 'null' | 'seed';
+  | 'label'
+  | 'trials'
+  | 'units'
+  | 'window'
+  | 'estimator'
+  | 'folds'
+  | 'nuisance'
+  | 'null'
+  | 'controls'
+  | 'views'
+  | 'seed';
