@@ -126,18 +126,29 @@ function open(library: LibraryHandle): Linalg {
     );
   }
 
-  function gram(of: 'columns' | 'rows', rows: number, cols: number, a: Float64Array): Float64Array {
+  function gram(
+    of: 'columns' | 'rows',
+    rows: number,
+    cols: number,
+    a: Float64Array,
+    into?: Float64Array,
+  ): Float64Array {
     need(a instanceof Float64Array, 'gram operand');
     checkMatrix('A', a, rows, cols, cols);
     const order = of === 'columns' ? cols : rows;
     const depth = of === 'columns' ? rows : cols;
-    const out = new Float64Array(order * order);
+    const out = into ?? new Float64Array(order * order);
+    need(out instanceof Float64Array, 'gram result');
+    checkMatrix('G', out, order, order, order);
     if (order === 0 || depth === 0) return out;
     const trans = TRANSPOSE[of === 'columns' ? 'transpose' : 'none'];
-    dsyrk(ROW_MAJOR, UPPER, trans, order, depth, 1, a, cols, 0, out, order);
+    dsyrk(ROW_MAJOR, UPPER, trans, order, depth, 1, a, cols, into === undefined ? 0 : 1, out, order);
     for (let i = 0; i < order; i++) for (let j = 0; j < i; j++) out[i * order + j] = out[j * order + i];
     return out;
   }
+
+  /** Work space of the eigensolver, 2·n² numbers, kept: asking for it anew each time would leave as much to collect. */
+  let eigenWork = new Float64Array(0);
 
   function symmetricEigen(n: number, a: Float64Array): SymmetricEigen {
     need(a instanceof Float64Array, 'symmetricEigen operand');
@@ -147,11 +158,12 @@ function open(library: LibraryHandle): Linalg {
     const size = Int32Array.of(n);
     const lwork = 1 + 6 * n + 2 * n * n;
     const liwork = 3 + 5 * n;
+    if (eigenWork.length < lwork) eigenWork = new Float64Array(lwork);
     const info = new Int32Array(1);
     // The row-major matrix read by columns is its own transpose; eigenvectors come out as columns, which are our rows.
     dsyevd(
       letter('V'), letter('L'), size, a, size, values,
-      new Float64Array(lwork), Int32Array.of(lwork), new Int32Array(liwork), Int32Array.of(liwork), info, 1, 1,
+      eigenWork, Int32Array.of(lwork), new Int32Array(liwork), Int32Array.of(liwork), info, 1, 1,
     ); // prettier-ignore
     if (info[0] !== 0)
       throw new RangeError(`symmetric eigenproblem of order ${n} did not converge (${info[0]})`);

@@ -10,7 +10,7 @@ const { input, plan } = workerData as { input: ReadoutInput; plan: ReadoutPlan }
 const port = parentPort;
 if (port === null) throw new Error('this file runs as a thread of the benchmark');
 const linalg = openNativeLinalg() ?? portableLinalg;
-const cache = boundedCache(96 * 2 ** 20);
+const cache = boundedCache(64 * 2 ** 20);
 port.on('message', (id: number) => {
   const output: ChunkOutput = runChunk(input, plan, plan.chunks[id], linalg, cache);
   port.postMessage(output);

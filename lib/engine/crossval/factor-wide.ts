@@ -40,8 +40,7 @@ export function factorWide(
   for (const block of wide.blocks) {
     const part = standardise(wide.features(block), block.to - block.from, train, test, setup.scaling);
     if (part.p === 0) continue;
-    const own = linalg.gram('rows', nTrain, part.p, part.zTrain);
-    for (let i = 0; i < gram.length; i++) gram[i] += own[i];
+    linalg.gram('rows', nTrain, part.p, part.zTrain, gram);
     linalg.gemm(
       'none',
       'transpose',

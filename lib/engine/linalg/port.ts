@@ -66,9 +66,15 @@ export interface Linalg {
 
   /**
    * G = AᵀA ('columns', cols × cols) or AAᵀ ('rows', rows × rows) for A rows × cols; both triangles are filled.
-   * A is left alone. Cost about rows·cols·order flops.
+   * A is left alone. `into`, where given, is added to and returned; it must be symmetric. Cost about rows·cols·order flops.
    */
-  gram(of: 'columns' | 'rows', rows: number, cols: number, a: Float64Array): Float64Array;
+  gram(
+    of: 'columns' | 'rows',
+    rows: number,
+    cols: number,
+    a: Float64Array,
+    into?: Float64Array,
+  ): Float64Array;
 
   /** Eigen-decomposition of the symmetric n × n matrix `a`, which is destroyed. Cost about 9·n³ flops. */
   symmetricEigen(n: number, a: Float64Array): SymmetricEigen;

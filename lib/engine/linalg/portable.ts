@@ -30,11 +30,18 @@ function gemm(
   portableGemm(transA, transB, m, n, k, alpha, a, lda, b, ldb, beta, c, ldc);
 }
 
-function gram(of: 'columns' | 'rows', rows: number, cols: number, a: Float64Array): Float64Array {
+function gram(
+  of: 'columns' | 'rows',
+  rows: number,
+  cols: number,
+  a: Float64Array,
+  into?: Float64Array,
+): Float64Array {
   const order = of === 'columns' ? cols : rows;
-  const out = new Float64Array(order * order);
-  if (of === 'columns') gemm('transpose', 'none', cols, cols, rows, 1, a, cols, a, cols, 0, out, cols);
-  else gemm('none', 'transpose', rows, rows, cols, 1, a, cols, a, cols, 0, out, rows);
+  const out = into ?? new Float64Array(order * order);
+  const beta = into === undefined ? 0 : 1;
+  if (of === 'columns') gemm('transpose', 'none', cols, cols, rows, 1, a, cols, a, cols, beta, out, cols);
+  else gemm('none', 'transpose', rows, rows, cols, 1, a, cols, a, cols, beta, out, rows);
   return out;
 }
 

@@ -113,6 +113,18 @@ describe.each(backends)('%s linear algebra', (name, maybe) => {
     for (let j = 1; j < k; j++) expect(s[j]).toBeLessThanOrEqual(s[j - 1]);
   });
 
+  it('adds a Gram matrix to one that is given, and solves small problems after large ones', () => {
+    const x = normals(30 * 8, 8);
+    const halves = la.gram('columns', 15, 8, x.subarray(0, 120));
+    expect(la.gram('columns', 15, 8, x.subarray(120), halves)).toBe(halves);
+    const whole = la.gram('columns', 30, 8, x);
+    expect(largestGap(halves, whole)).toBeLessThan(1e-13);
+    const before = la.symmetricEigen(3, Float64Array.of(2, 0, 0, 0, 3, 0, 0, 0, 5)).values;
+    la.symmetricEigen(8, whole);
+    expect(la.symmetricEigen(3, Float64Array.of(2, 0, 0, 0, 3, 0, 0, 0, 5)).values).toEqual(before);
+    expect(Array.from(before)).toEqual([2, 3, 5]);
+  });
+
   it('refuses arrays that are too short instead of reading past them', () => {
     const short = new Float64Array(3);
     expect(() => la.gemm('none', 'none', 2, 2, 2, 1, short, 2, short, 2, 0, new Float64Array(4), 2)).toThrow(
