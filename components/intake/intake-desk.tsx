@@ -45,7 +45,7 @@ export function IntakeDesk({
   const { session, files, refresh } = useSessionFiles({ session: initialSession, files: initialFiles });
   const { uploads, add, drop } = useUploads(session.id, files, refresh);
   const readable = useReadable(files);
-  const mapping = useMapping(session.id, readable);
+  const mapping = useMapping(session, readable);
   const submit = useSubmitIntake(session.id, refresh);
   const [accepted, setAccepted] = useState<string | null>(null);
 

@@ -11,12 +11,16 @@ import { requestJson } from '@/lib/client/request-json';
 import type { StoredFile } from '@/lib/contracts/file';
 import { intakeProposalSchema, type IntakeProposal } from '@/lib/contracts/intake';
 import { intakePreviewSchema } from '@/lib/contracts/intake-answer';
+import type { Session } from '@/lib/contracts/session';
 
 const nFirstTrials = 6;
 const settleMs = 500;
 
 /** The mapping of a session's readable files: proposed by the service, changed by the member, tried out by a preview. */
-export function useMapping(sessionId: string, readable: readonly StoredFile[]) {
+export function useMapping(session: Session, readable: readonly StoredFile[]) {
+  const sessionId = session.id;
+  // what the session's present data have stands until the files say otherwise
+  const { binWidthMs, windowStartMs } = session;
   const ids = readable.map((file) => file.id).join(' ');
   const proposal = useQuery({
     queryKey: ['proposal', sessionId, ids],
@@ -28,8 +32,19 @@ export function useMapping(sessionId: string, readable: readonly StoredFile[]) {
   });
   const [changes, setChanges] = useState<Partial<IntakeDraft>>({});
   const draft = useMemo(
-    () => mergeDraft(draftFromIntake(proposal.data?.intake ?? {}, readable), changes),
-    [proposal.data, readable, changes],
+    () =>
+      mergeDraft(
+        draftFromIntake(
+          {
+            ...(binWidthMs === null ? {} : { binWidthMs }),
+            ...(windowStartMs === null ? {} : { windowStartMs }),
+            ...proposal.data?.intake,
+          },
+          readable,
+        ),
+        changes,
+      ),
+    [proposal.data, readable, changes, binWidthMs, windowStartMs],
   );
   const outcome = useMemo(() => intakeFromDraft(draft, readable), [draft, readable]);
 

@@ -9,6 +9,7 @@ export function FailureWords({ digest }: { digest: string | undefined }) {
           themselves.
         </p>
         <p>
+          {/* eslint-disable-next-line @next/next/no-html-link-for-pages -- it answers JSON and is no page of the application */}
           <a href="/api/health">See which parts answer</a>
         </p>
       </>
