@@ -1,8 +1,7 @@
-import { notFound } from 'next/navigation';
 import { cache } from 'react';
+import { orNotFound } from '@/app/(lab)/or-not-found';
 import { readAll } from '@/app/(lab)/read-all';
 import { requirePageContext } from '@/lib/auth/page-context';
-import { AppError } from '@/lib/errors/app-error';
 import { listExclusions } from '@/lib/services/exclusions/list-exclusions';
 import { loadTables } from '@/lib/services/intake/load-session-data';
 import { getReadout } from '@/lib/services/readouts/get-readout';
@@ -13,15 +12,9 @@ import { getStudy } from '@/lib/services/studies/get-study';
 import { toSheetColumn } from '@/components/session/sheet-column';
 
 /** The readout by its id, read once a request; another lab's is not found. */
-export const readReadout = cache(async (readoutId: string) => {
-  const ctx = await requirePageContext();
-  try {
-    return await getReadout(ctx, { readoutId });
-  } catch (error) {
-    if (error instanceof AppError && error.code === 'not-found') notFound();
-    throw error;
-  }
-});
+export const readReadout = cache(async (readoutId: string) =>
+  orNotFound(getReadout(await requirePageContext(), { readoutId })),
+);
 
 /** Where the readout stands: its session, study, and the number of the session's newest readout. */
 export async function readPlace(sessionId: string) {

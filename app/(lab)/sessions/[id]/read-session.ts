@@ -1,5 +1,5 @@
-import { notFound } from 'next/navigation';
 import { cache } from 'react';
+import { orNotFound } from '@/app/(lab)/or-not-found';
 import { readAll } from '@/app/(lab)/read-all';
 import { excludedWithReasons } from '@/components/session/excluded-with-reasons';
 import { findBlockColumn } from '@/components/session/find-block-column';
@@ -7,7 +7,6 @@ import { toSheetColumn, type SheetColumn } from '@/components/session/sheet-colu
 import type { UnitRow } from '@/components/session/unit-row';
 import { requirePageContext } from '@/lib/auth/page-context';
 import type { ExclusionList, Session } from '@/lib/contracts/session';
-import { AppError } from '@/lib/errors/app-error';
 import { listExclusions } from '@/lib/services/exclusions/list-exclusions';
 import { loadTables } from '@/lib/services/intake/load-session-data';
 import { listReadouts } from '@/lib/services/readouts/list-readouts';
@@ -15,15 +14,9 @@ import { getSession } from '@/lib/services/sessions/get-session';
 import { getStudy } from '@/lib/services/studies/get-study';
 
 /** The session by its id, read once a request; another lab's is not found. */
-export const readSession = cache(async (sessionId: string): Promise<Session> => {
-  const ctx = await requirePageContext();
-  try {
-    return await getSession(ctx, { sessionId });
-  } catch (error) {
-    if (error instanceof AppError && error.code === 'not-found') notFound();
-    throw error;
-  }
-});
+export const readSession = cache(async (sessionId: string): Promise<Session> =>
+  orNotFound(getSession(await requirePageContext(), { sessionId })),
+);
 
 /** The session's study, exclusions and attempt ledger. */
 export async function readSurroundings(session: Session) {

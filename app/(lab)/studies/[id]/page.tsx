@@ -1,5 +1,4 @@
 import type { Metadata } from 'next';
-import { notFound } from 'next/navigation';
 import { readStudy, readStudyRows } from '@/app/(lab)/studies/[id]/read-study';
 import { Sheet } from '@/components/shell/sheet';
 import { AnimalTable } from '@/components/study/animal-table';
@@ -14,7 +13,6 @@ import { Facts } from '@/components/ui/facts';
 import { numbers } from '@/components/ui/numbers';
 import { Section } from '@/components/ui/section';
 import { requirePageContext } from '@/lib/auth/page-context';
-import { AppError } from '@/lib/errors/app-error';
 import { formatCount } from '@/lib/format/format-count';
 import { formatDate } from '@/lib/format/format-date';
 import { formatPlural } from '@/lib/format/format-plural';
@@ -24,23 +22,14 @@ interface PageProps {
   params: Promise<{ id: string }>;
 }
 
-async function studyOr404(id: string) {
-  try {
-    return await readStudy(id);
-  } catch (error) {
-    if (error instanceof AppError && error.code === 'not-found') notFound();
-    throw error;
-  }
-}
-
 export async function generateMetadata({ params }: PageProps): Promise<Metadata> {
-  return { title: (await studyOr404((await params).id)).name };
+  return { title: (await readStudy((await params).id)).name };
 }
 
 export default async function StudyPage({ params }: PageProps) {
   const { id } = await params;
   const ctx = await requirePageContext();
-  const study = await studyOr404(id);
+  const study = await readStudy(id);
   const { groups, rows } = await readStudyRows(id);
   const animals = groups.map((group) => group.animal);
   const species = [...new Set(animals.map((animal) => animal.species))];

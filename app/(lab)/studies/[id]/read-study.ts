@@ -1,4 +1,5 @@
 import { cache } from 'react';
+import { orNotFound } from '@/app/(lab)/or-not-found';
 import { readAll } from '@/app/(lab)/read-all';
 import type { ForestGroup, ForestRow } from '@/components/study/forest-row';
 import { requirePageContext } from '@/lib/auth/page-context';
@@ -17,8 +18,10 @@ function newestOfEachLabel(readouts: readonly ReadoutSummary[]): ReadoutSummary[
   return [...byLabel.values()];
 }
 
-/** The study by its id, read once a request. */
-export const readStudy = cache(async (studyId: string) => getStudy(await requirePageContext(), { studyId }));
+/** The study by its id, read once a request; another lab's is not found. */
+export const readStudy = cache(async (studyId: string) =>
+  orNotFound(getStudy(await requirePageContext(), { studyId })),
+);
 
 /** All that the study's page shows: animals with their sessions, and each session's newest readouts. */
 export async function readStudyRows(

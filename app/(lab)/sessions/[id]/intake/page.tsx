@@ -1,37 +1,25 @@
 import type { Metadata } from 'next';
-import { notFound } from 'next/navigation';
-import { cache } from 'react';
 import { readAll } from '@/app/(lab)/read-all';
+import { readSession } from '@/app/(lab)/sessions/[id]/read-session';
 import { IntakeDesk } from '@/components/intake/intake-desk';
 import { Sheet } from '@/components/shell/sheet';
 import { requirePageContext } from '@/lib/auth/page-context';
-import { AppError } from '@/lib/errors/app-error';
 import { can } from '@/lib/policy/can';
 import { listFiles } from '@/lib/services/files/list-files';
-import { getSession } from '@/lib/services/sessions/get-session';
 import { getStudy } from '@/lib/services/studies/get-study';
 
 interface PageProps {
   params: Promise<{ id: string }>;
 }
 
-const sessionOr404 = cache(async (sessionId: string) => {
-  try {
-    return await getSession(await requirePageContext(), { sessionId });
-  } catch (error) {
-    if (error instanceof AppError && error.code === 'not-found') notFound();
-    throw error;
-  }
-});
-
 export async function generateMetadata({ params }: PageProps): Promise<Metadata> {
-  return { title: `Bring the files in, ${(await sessionOr404((await params).id)).name}` };
+  return { title: `Bring the files in, ${(await readSession((await params).id)).name}` };
 }
 
 export default async function IntakePage({ params }: PageProps) {
   const { id } = await params;
   const ctx = await requirePageContext();
-  const session = await sessionOr404(id);
+  const session = await readSession(id);
   const [study, files] = await Promise.all([
     getStudy(ctx, { studyId: session.studyId }),
     readAll((cursor) => listFiles(ctx, { sessionId: id, cursor, limit: 200 })),

@@ -1,5 +1,0 @@
-import { LoadingSheet } from '@/components/shell/loading-sheet';
-
-export default function Loading() {
-  return <LoadingSheet titles={['All studies']} />;
-}
