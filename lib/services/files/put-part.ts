@@ -77,7 +77,8 @@ export async function putPart(ctx: Ctx, input: PutPartInput): Promise<{ number: 
     throw error;
   }
   const fault = await flow;
-  if (fault !== null) throw fault;
+  if (fault !== null)
+    throw fault instanceof Error ? fault : new Error('the part could not be read', { cause: fault });
   const { sha256 } = check;
   if (input.sha256 != null && input.sha256 !== sha256)
     throw new AppError(

@@ -8,6 +8,7 @@ import path from 'node:path';
 export function readerEntry(): { file: string; execArgv: string[] } {
   const root = process.cwd();
   const heap = '--max-old-space-size=256';
+  // eslint-disable-next-line no-restricted-properties -- where a build lies is no setting of the product
   const { VITEST, OUTFOLD_WORKER_DIST, OUTFOLD_DIST } = process.env;
   // The worker has it beside itself; for the web server it lies in the build's other folder, or in the usual place. Tests
   // look only beside the running program, because an older build may lie elsewhere.

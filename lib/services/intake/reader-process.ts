@@ -31,7 +31,7 @@ function start(): ChildProcess {
     execArgv,
     serialization: 'advanced',
     // Nothing of ours: no settings, no credentials.
-    env: { NODE_ENV: process.env.NODE_ENV ?? 'production' },
+    env: { NODE_ENV: 'production' },
     stdio: ['ignore', 'ignore', 'pipe', 'ipc', 'pipe'],
   });
 }

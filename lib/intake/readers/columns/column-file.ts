@@ -29,7 +29,7 @@ export function columnFile(
       dtype: column.dtype,
       shape: [column.values.length],
       order: 'C',
-      chunks: async function* (): AsyncGenerator<ValueChunk, void, undefined> {
+      async *chunks(): AsyncGenerator<ValueChunk, void, undefined> {
         const { values } = column;
         yield Array.isArray(values) ? values.map((value) => value ?? '') : values;
       },
@@ -37,7 +37,7 @@ export function columnFile(
     table: {
       header: columns.map((column) => column.name),
       nRows,
-      rows: async function* (): AsyncGenerator<TableRow[], void, undefined> {
+      async *rows(): AsyncGenerator<TableRow[], void, undefined> {
         for (let from = 0; from < nRows; from += ROWS_AT_ONCE) {
           const n = Math.min(ROWS_AT_ONCE, nRows - from);
           yield Array.from({ length: n }, (_, at) => ({

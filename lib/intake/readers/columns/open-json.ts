@@ -143,7 +143,7 @@ function numbers(path: string, shape: number[], values: number[]): ReadableArray
     dtype: values.every((value) => Number.isSafeInteger(value)) ? 'int64' : 'float64',
     shape,
     order: 'C',
-    chunks: async function* () {
+    async *chunks() {
       yield Float64Array.from(values);
     },
   };

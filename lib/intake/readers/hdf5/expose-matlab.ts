@@ -44,7 +44,7 @@ export function exposeMatlab(
         dtype: 'string',
         shape: [1],
         order: 'C',
-        chunks: async function* () {
+        async *chunks() {
           let text = '';
           for await (const chunk of array.chunks())
             for (const unit of chunk) text += String.fromCharCode(Number(unit));
@@ -73,7 +73,7 @@ function stack(items: readonly ReadableArray[][], path: string): ReadableArray |
     dtype: first.dtype,
     shape: [arrays.length, ...inner],
     order: 'C',
-    chunks: async function* () {
+    async *chunks() {
       for (const array of arrays) {
         if (array.dtype === 'string') {
           yield* array.chunks();

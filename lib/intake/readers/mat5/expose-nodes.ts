@@ -88,7 +88,7 @@ function texts(values: string[], path: string): ReadableArray {
     dtype: 'string',
     shape: [values.length],
     order: 'C',
-    chunks: async function* () {
+    async *chunks() {
       yield values;
     },
   };
@@ -163,7 +163,7 @@ function exposeSparse(
     dtype: 'float64',
     shape: node.shape,
     order: 'F',
-    chunks: async function* () {
+    async *chunks() {
       const pull = new PullBytes(bytes.open());
       const whole = async (values: StoredValues): Promise<Float64Array> => {
         const all: number[] = [];
