@@ -46,13 +46,11 @@ export function TimeCourse({
   const first = points[0]?.centreMs ?? 0;
   const last = points[points.length - 1]?.centreMs ?? 1;
   const step = points.length > 1 ? points[1].centreMs - points[0].centreMs : 1;
-  const xTicks = axisTicks(
-    Math.min(first, window.startMs),
-    Math.max(last, window.endMs),
-    width < 420 ? 4 : 7,
-  );
+  const low = Math.min(first, window.startMs);
+  const high = Math.max(last, window.endMs);
+  const xTicks = axisTicks(low, high, width < 420 ? 4 : 7, true);
   const yTicks = axisTicks(Math.min(...known), Math.max(...known), 6);
-  const x = linearScale(xTicks.values[0], xTicks.values[xTicks.values.length - 1], 50, width - 10);
+  const x = linearScale(low, high, 56, width - 14);
   const y = linearScale(yTicks.values[0], yTicks.values[yTicks.values.length - 1], height - 60, 40);
   const band = (
     top: (p: TimeCoursePoint) => number | null | undefined,

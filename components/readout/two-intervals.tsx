@@ -22,25 +22,29 @@ export function TwoIntervals({ result }: { result: ReadoutResult }) {
   const axis = sharedAxis(rows.map((row) => ({ value: heldOut.r2, interval: row.interval })));
   return (
     <div className="scroll" tabIndex={0} role="region" aria-label="Table of the two intervals">
-      <table style={{ minWidth: 640 }}>
+      <table className="stack ctls" role="table">
         <caption className="vh">Two intervals of the held-out R²</caption>
-        <thead>
-          <tr>
-            <th scope="col">Interval</th>
-            <th scope="col" style={{ width: 264 }}>
+        <thead role="rowgroup">
+          <tr role="row">
+            <th scope="col" role="columnheader">
+              Interval
+            </th>
+            <th scope="col" role="columnheader" style={{ width: 264 }}>
               <IntervalAxis axis={axis} width={250} />
             </th>
-            <th scope="col" className="num">
+            <th scope="col" role="columnheader" className="num">
               R²<span className="u">95 %</span>
             </th>
-            <th scope="col">What it covers</th>
+            <th scope="col" role="columnheader">
+              What it covers
+            </th>
           </tr>
         </thead>
-        <tbody>
+        <tbody role="rowgroup">
           {rows.map((row) => (
-            <tr key={row.name}>
-              <td>{row.name}</td>
-              <td className="iv">
+            <tr key={row.name} role="row">
+              <td role="cell">{row.name}</td>
+              <td role="cell" className="iv">
                 <IntervalGlyph
                   value={heldOut.r2}
                   interval={row.interval}
@@ -49,8 +53,10 @@ export function TwoIntervals({ result }: { result: ReadoutResult }) {
                   width={250}
                 />
               </td>
-              <td className="n">{formatInterval(row.interval)}</td>
-              <td className="say" style={{ paddingBlock: 6, lineHeight: 1.35 }}>
+              <td role="cell" className="n">
+                {formatInterval(row.interval)}
+              </td>
+              <td role="cell" className="say" style={{ paddingBlock: 6, lineHeight: 1.35 }}>
                 {numbers(row.covers)}
               </td>
             </tr>
