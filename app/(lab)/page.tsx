@@ -1,4 +1,5 @@
 import type { Metadata } from 'next';
+import Link from 'next/link';
 import { readAll } from '@/app/(lab)/read-all';
 import { Sheet } from '@/components/shell/sheet';
 import { CreateStudy } from '@/components/study/create-study';
@@ -44,6 +45,14 @@ export default async function LabPage() {
               <b>{ctx.actor.labName}</b>
             </p>
             <p>You are here as {ctx.actor.role}.</p>
+            <p>
+              <Link href="/members">Members</Link>
+            </p>
+            {can(ctx.actor, 'audit.read') ? (
+              <p>
+                <Link href="/audit">Audit trail</Link>
+              </p>
+            ) : null}
           </>
         }
       >

@@ -67,7 +67,7 @@ export function authOptions(request: SignInRequest): AuthConfig {
     logger: {
       // Wrong passwords are in the audit trail; Auth.js's own lines would add stack traces to each of them.
       error: (error) => {
-        if (error.name !== 'CredentialsSignin') log.warn({ err: error }, 'account service');
+        if (!(error instanceof CredentialsSignin)) log.warn({ err: error }, 'account service');
       },
       warn: (code) => log.debug({ code }, 'account service'),
       debug: () => undefined,
