@@ -3,6 +3,7 @@ import type { PartRecord } from '@/lib/intake/canonical/part-record';
 
 /** What a readout is made on: one data version of a session, and the animal's name for the verdict. */
 export interface ReadoutSubject {
+  sessionId: string;
   dataVersionId: string;
   dataVersion: number;
   dataHash: string;
@@ -37,12 +38,33 @@ export async function findSubject(
   return row ? toSubject(row) : null;
 }
 
+/** The newest data of the other sessions of a session's study, in the order in which the sessions were made. */
+export async function listSiblingSubjects(
+  q: Knex,
+  labId: string,
+  sessionId: string,
+  limit: number,
+): Promise<ReadoutSubject[]> {
+  const rows: Record<string, unknown>[] = await subjects(q)
+    .where({ 'd.lab_id': labId })
+    .andWhere(
+      's.study_id',
+      q('recording_sessions').select('study_id').where({ id: sessionId, lab_id: labId }),
+    )
+    .andWhereNot({ 's.id': sessionId })
+    .andWhere('d.number', q.raw('(select max(n.number) from data_versions n where n.session_id = s.id)'))
+    .orderBy('s.id')
+    .limit(limit);
+  return rows.map(toSubject);
+}
+
 function subjects(q: Knex) {
   return q('data_versions as d')
     .join('recording_sessions as s', 's.id', 'd.session_id')
     .join('animals as a', 'a.id', 's.animal_id')
     .select(
       'd.id',
+      'd.session_id',
       'd.number',
       'd.data_hash',
       'd.n_trials',
@@ -57,6 +79,7 @@ function subjects(q: Knex) {
 
 function toSubject(row: Record<string, unknown>): ReadoutSubject {
   return {
+    sessionId: row.session_id as string,
     dataVersionId: row.id as string,
     dataVersion: row.number as number,
     dataHash: row.data_hash as string,

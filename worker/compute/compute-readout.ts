@@ -13,7 +13,7 @@ import { objectStore } from '@/storage/object-store';
 import { ComputeFault } from '@/worker/compute/compute-fault';
 import { decodeOutput, encodeOutput } from '@/worker/compute/encode-output';
 import { libraryVersions } from '@/worker/compute/library-versions';
-import { loadPermutations } from '@/worker/compute/load-permutations';
+import { loadNullInputs } from '@/worker/compute/load-null-inputs';
 import { loadCounts, loadTables } from '@/worker/compute/load-session';
 import { memoryProblem } from '@/worker/compute/memory-problem';
 import type { ComputeRequest, FromChild } from '@/worker/compute/messages';
@@ -38,9 +38,9 @@ export async function computeReadout(
     progress: { done: 0, total: 1_000, phase: 'Reading the data', secondsLeft: null },
   });
   const source = sessionParts(request);
-  const [tables, permutations] = await Promise.all([loadTables(source, request), loadPermutations(request)]);
+  const [tables, inputs] = await Promise.all([loadTables(source, request), loadNullInputs(request)]);
   const { excludedTrials, excludedUnits } = request;
-  const resolution = resolveRecipe(request.recipe, tables, { excludedTrials, excludedUnits, permutations });
+  const resolution = resolveRecipe(request.recipe, tables, { excludedTrials, excludedUnits, ...inputs });
   if ('faults' in resolution) return send({ kind: 'problems', problems: recipeProblems(resolution.faults) });
   const { resolved } = resolution;
   const { binFrom, binTo } = resolved.bins;
@@ -150,5 +150,5 @@ function gravestFirst(problems: Problem[]): Problem[] {
 }
 
 function namesOf(values: (string | null)[], index: Int32Array): string[] {
-  return [...new Set(Array.from(index, (unit) => values[unit]).filter((name) => name !== null))].sort();
+  return [...new Set(Array.from(index, (unit) => values[unit]).filter((name) => name !== null))];
 }

@@ -1,4 +1,4 @@
-import { resultSchema, type ReadoutResult } from '@/lib/contracts/readout';
+import { resultSchema, type Interval, type ReadoutResult } from '@/lib/contracts/readout';
 import type { Problem } from '@/lib/contracts/problem';
 import type { Recipe } from '@/lib/contracts/recipe';
 import type { ReadoutNumbers } from '@/lib/engine/readout/types';
@@ -38,10 +38,10 @@ export function buildResult(
     null: verdictNull(recipe, numbers.null),
     controls: numbers.controls.map((control, at) => ({
       kind: control.kind,
-      subject: recipeWords.control(recipe, at),
+      subjects: recipeWords.control(recipe, at),
       outcome: control.outcome,
       r2: numberOf(control.heldOut?.r2),
-      interval: null,
+      interval: intervalOf(control.heldOut),
     })),
     smallestEffect: null,
     labelTrends: facts.labelTrends,
@@ -63,6 +63,15 @@ function verdictNull(recipe: Recipe, control: ReadoutNumbers['null']): VerdictNu
   if (p === null || smallestP === null || q025 === null || q95 === null || q975 === null || max === null)
     return null;
   return { scheme: recipeWords.shuffle(recipe), draws, p, smallestP, q025, q95, q975, max };
+}
+
+/** The interval that a control's numbers carry, where they do. */
+function intervalOf(heldOut: Record<string, unknown> | null): Interval | null {
+  const low = numberOf(heldOut?.low);
+  const high = numberOf(heldOut?.high);
+  return low === null || high === null
+    ? null
+    : { low, high, level: 0.95, method: 'test-trial interval, readouts held fixed' };
 }
 
 function numberOf(value: unknown): number | null {

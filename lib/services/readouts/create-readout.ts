@@ -12,6 +12,7 @@ import { authorize } from '@/lib/services/authorize';
 import type { Ctx } from '@/lib/services/context';
 import { pokeRelay } from '@/lib/services/outbox/poke-relay';
 import { invalidRecipe } from '@/lib/services/readouts/invalid-recipe';
+import { labelSequences } from '@/lib/services/readouts/label-sequences';
 import { prepareRecipe, type PreparedRecipe } from '@/lib/services/readouts/prepare-recipe';
 import { hashPermutations, writePermutations } from '@/lib/services/readouts/readout-inputs';
 import { toReadout } from '@/lib/services/readouts/to-readout';
@@ -70,15 +71,19 @@ export async function createReadout(
 }
 
 /**
- * The recipe as its row keeps it, and what goes to the object store instead: long permutations, and those of a file, which
- * may be removed some day. The hash covers the permutations' content, so it does not matter how they were sent.
+ * The recipe as its row keeps it, and what goes to the object store instead: long permutations, those of a file, which may
+ * be removed some day, and the label sequences of other sessions, which may change. The hash covers the permutations' content, so it does not matter how they were sent.
  */
-function keepRecipe({ recipe, permutations }: PreparedRecipe): {
+function keepRecipe({ recipe, permutations, sequences }: PreparedRecipe): {
   recipe: Recipe;
   recipeHash: string;
   inputs: Uint8Array | null;
 } {
   const hashOf = (value: Recipe) => createHash('sha256').update(canonicalJson(value)).digest('hex');
+  if (sequences) {
+    const brief = { ...recipe, null: { ...recipe.null, inputsSha256: labelSequences.hash(sequences) } };
+    return { recipe: brief, recipeHash: hashOf(brief), inputs: labelSequences.write(sequences) };
+  }
   if (!permutations) return { recipe, recipeHash: hashOf(recipe), inputs: null };
   const { permutations: sent, ...scheme } = recipe.null;
   const inputsSha256 = hashPermutations(permutations);

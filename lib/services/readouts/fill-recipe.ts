@@ -77,6 +77,7 @@ function fillNull(given: RecipeInput['null']): Recipe['null'] {
   const scheme = given ?? { kind: 'free' };
   switch (scheme.kind) {
     case 'none':
+    case 'sessions': // one draw for each other session, however many there are
       return scheme;
     case 'given':
       return Array.isArray(scheme.permutations) ? { ...scheme, draws: scheme.permutations.length } : scheme;

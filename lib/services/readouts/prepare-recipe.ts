@@ -11,6 +11,7 @@ import { exclusionsOf } from '@/lib/services/readouts/exclusions-of';
 import { fillRecipe } from '@/lib/services/readouts/fill-recipe';
 import { loadSessionTables } from '@/lib/services/readouts/load-session-tables';
 import { findPermutations } from '@/lib/services/readouts/find-permutations';
+import { findSequences } from '@/lib/services/readouts/find-sequences';
 import type { Permutations } from '@/lib/services/readouts/readout-inputs';
 import type { RecipeFault } from '@/lib/services/readouts/recipe-fault';
 import type { ResolvedRecipe } from '@/lib/services/readouts/resolve-recipe';
@@ -24,6 +25,8 @@ export interface PreparedRecipe {
   resolved: ResolvedRecipe | null;
   /** The given permutations, wherever they came from; null without. */
   permutations: Permutations | null;
+  /** Label sequences of other sessions; null where the null does not use them. */
+  sequences: Float64Array[] | null;
 }
 
 /**
@@ -50,6 +53,7 @@ export async function prepareRecipe(
       recipe,
       resolved: null,
       permutations: null,
+      sequences: null,
       faults: [
         {
           pointer: '/recipe/exclusions/version',
@@ -59,12 +63,14 @@ export async function prepareRecipe(
       ],
     };
   const excluded = await exclusionsOf(labId, sessionId, recipe);
-  const tables = await loadSessionTables(sessionParts({ labId, sessionId, ...subject }), subject);
+  const tables = await loadSessionTables(sessionParts({ labId, ...subject }), subject);
   const permutations = await findPermutations(labId, sessionId, recipe.null);
+  const sequences = recipe.null.kind === 'sessions' ? await findSequences(labId, sessionId, recipe) : null;
   const checked = checkRecipe(recipe, tables, {
     excludedTrials: excluded.trials,
     excludedUnits: excluded.units,
     ...(permutations.rows ? { permutations: permutations.rows } : {}),
+    ...(sequences ? { sequences } : {}),
   });
   // What is wrong with a file is told instead of "there are no permutations", which follows from it.
   const faults = [
@@ -74,15 +80,15 @@ export async function prepareRecipe(
     ),
   ];
   if (faults.length > 0 || 'faults' in checked)
-    return { subject, recipe, faults, resolved: null, permutations: null };
-  const drawn = permutations.rows
-    ? { ...recipe, null: { ...recipe.null, draws: permutations.rows.length } }
-    : recipe;
+    return { subject, recipe, faults, resolved: null, permutations: null, sequences: null };
+  const draws = permutations.rows?.length ?? sequences?.length ?? recipe.null.draws;
+  const drawn = draws === undefined ? recipe : { ...recipe, null: { ...recipe.null, draws } };
   return {
     subject,
     recipe: drawn,
     faults: [],
     resolved: checked.resolved,
     permutations: permutations.matrix,
+    sequences,
   };
 }

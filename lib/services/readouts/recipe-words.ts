@@ -47,30 +47,30 @@ export const recipeWords = {
     }
   },
 
-  /** What a control is about, as a noun. */
-  control(recipe: Recipe, at: number): VerdictControl['subject'] {
+  /** What a control is about, as nouns. */
+  control(recipe: Recipe, at: number): VerdictControl['subjects'] {
     const control = recipe.controls[at];
     switch (control?.kind) {
       case 'nuisanceOnly':
       case 'incremental':
       case 'adjusted':
-        return control.columns.map(({ column }) => column.replaceAll('_', ' ')).join(' and ');
+        return control.columns.map(({ column }) => column.replaceAll('_', ' '));
       case 'matched':
       case 'generalise':
-        return control.column.replaceAll('_', ' ');
+        return [control.column.replaceAll('_', ' ')];
       case 'totalRate':
       case 'rateNormalised':
-        return 'firing rate';
+        return ['firing rate'];
       case 'trialOrder':
-        return 'trial order';
+        return ['trial order'];
       case 'window':
-        return `the window ${control.startMs} to ${control.endMs} ms`;
+        return [`the window ${control.startMs} to ${control.endMs} ms`];
       case 'breakCorrelations':
-        return 'correlations between units';
+        return ['correlations between units'];
       case 'injection':
-        return 'an injected signal';
+        return ['an injected signal'];
       default:
-        return 'a control';
+        return ['a control'];
     }
   },
 };

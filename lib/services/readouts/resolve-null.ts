@@ -4,6 +4,14 @@ import { codeLevels } from '@/lib/services/readouts/code-levels';
 import type { RecipeFault } from '@/lib/services/readouts/recipe-fault';
 import type { SessionTables } from '@/lib/services/readouts/session-tables';
 
+/** What a null takes beside its recipe, wherever it was kept. */
+export interface NullInputs {
+  /** Given permutations of the included trials. */
+  permutations?: readonly ArrayLike<number>[];
+  /** Label sequences of other sessions. */
+  sequences?: readonly Float64Array[];
+}
+
 /** Which optional fields each kind reads; the others must be left out. */
 const fields: Record<Recipe['null']['kind'], string[]> = {
   none: [],
@@ -11,19 +19,18 @@ const fields: Record<Recipe['null']['kind'], string[]> = {
   within: ['draws', 'column'],
   groups: ['draws', 'column'],
   circularShift: ['draws'],
-  sessions: ['draws'],
+  sessions: ['draws', 'inputsSha256'],
   given: ['draws', 'permutations', 'inputsSha256'],
 };
 
 /**
  * The shuffled control as the engine takes it, or what is wrong with it.
- * @param permutations the given permutations wherever they were kept; undefined when none were given
  */
 export function resolveNull(
   recipe: Recipe,
   tables: SessionTables,
   nIncluded: number,
-  permutations: readonly ArrayLike<number>[] | undefined,
+  { permutations, sequences }: NullInputs,
 ): { nullScheme: NullSpec } | { faults: RecipeFault[] } {
   const scheme = recipe.null;
   const stray = Object.entries(scheme).find(
@@ -50,11 +57,19 @@ export function resolveNull(
       return { nullScheme: { kind: scheme.kind, codes: codeLevels(column).codes, draws } };
     }
     case 'sessions':
-      return one(
-        '/recipe/null/kind',
-        'not-available',
-        'Label sequences of other sessions cannot be used here.',
-      );
+      if (!sequences?.length)
+        return one(
+          '/recipe/null/kind',
+          'no-other-sessions',
+          `No other session of this study has the label “${recipe.label}” as numbers.`,
+        );
+      if (scheme.draws !== undefined && scheme.draws !== sequences.length)
+        return one(
+          '/recipe/null/draws',
+          'length',
+          `There are ${sequences.length} other sessions, each one draw, not ${scheme.draws}.`,
+        );
+      return { nullScheme: { kind: 'sessions', sequences: [...sequences] } };
     case 'given':
       return given(permutations, nIncluded, scheme.draws);
   }

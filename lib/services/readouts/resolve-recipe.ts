@@ -6,7 +6,7 @@ import type { RecipeFault } from '@/lib/services/readouts/recipe-fault';
 import { resolveControl } from '@/lib/services/readouts/resolve-control';
 import { resolveFolds } from '@/lib/services/readouts/resolve-folds';
 import { resolveNuisance } from '@/lib/services/readouts/resolve-nuisance';
-import { resolveNull } from '@/lib/services/readouts/resolve-null';
+import { resolveNull, type NullInputs } from '@/lib/services/readouts/resolve-null';
 import { selectTrials } from '@/lib/services/readouts/select-trials';
 import { selectUnits } from '@/lib/services/readouts/select-units';
 import type { SessionTables } from '@/lib/services/readouts/session-tables';
@@ -33,11 +33,7 @@ export interface ResolvedRecipe {
 export function resolveRecipe(
   recipe: Recipe,
   tables: SessionTables,
-  given: {
-    excludedTrials: readonly number[];
-    excludedUnits: readonly number[];
-    permutations?: readonly ArrayLike<number>[];
-  },
+  given: { excludedTrials: readonly number[]; excludedUnits: readonly number[] } & NullInputs,
 ): { resolved: ResolvedRecipe } | { faults: RecipeFault[] } {
   const faults: RecipeFault[] = [];
   const bins = findBins(tables, recipe.window);
@@ -51,7 +47,7 @@ export function resolveRecipe(
 
   const folds = resolveFolds(recipe, tables, trialIndex);
   if ('faults' in folds) faults.push(...folds.faults);
-  const nullPart = resolveNull(recipe, tables, trialIndex.length, given.permutations);
+  const nullPart = resolveNull(recipe, tables, trialIndex.length, given);
   if ('faults' in nullPart) faults.push(...nullPart.faults);
   const nuisance = resolveNuisance(recipe.nuisance.columns, tables, '/recipe/nuisance/columns');
   faults.push(...nuisance.faults);

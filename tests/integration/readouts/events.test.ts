@@ -1,5 +1,5 @@
 import { setTimeout as sleep } from 'node:timers/promises';
-import { afterAll, beforeAll, expect, it } from 'vitest';
+import { afterAll, beforeAll, expect, it, vi } from 'vitest';
 import { liveEventSchema, type LiveEvent } from '@/lib/contracts/readout';
 import { closeRedis } from '@/lib/jobs/connection';
 import { publishLive } from '@/lib/jobs/publish-live';
@@ -14,6 +14,9 @@ import { until } from '@/tests/integration/readouts/until';
 import { control } from '@/tests/support/control';
 import { insertLab } from '@/tests/support/rows';
 import { freshDatabase } from '@/tests/support/services';
+
+/** Seconds on a machine that has nothing else to do; the limit is for one that has. */
+vi.setConfig({ testTimeout: 240_000, hookTimeout: 240_000 });
 
 let dropDatabase: () => Promise<void>;
 let made: MadeSession;

@@ -1,6 +1,6 @@
 import { tableFromIPC } from 'apache-arrow';
 import { rmSync } from 'node:fs';
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import { POST as postCancel } from '@/app/api/v1/readouts/[id]/cancel/route';
 import { GET as getPredictions } from '@/app/api/v1/readouts/[id]/predictions/route';
 import { GET as getReadout } from '@/app/api/v1/readouts/[id]/route';
@@ -18,6 +18,9 @@ import { insertLab } from '@/tests/support/rows';
 import { freshDatabase } from '@/tests/support/services';
 
 const nTrials = 90;
+/** Seconds on a machine that has nothing else to do; the limit is for one that has. */
+vi.setConfig({ testTimeout: 240_000, hookTimeout: 240_000 });
+
 let dropDatabase: () => Promise<void>;
 let folder: string;
 let worker: WorkerProcess;

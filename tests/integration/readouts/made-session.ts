@@ -58,9 +58,13 @@ export function makeData(shape: {
 }
 
 /** Puts data into a session (of a new lab unless one is given). */
-export async function makeSession(data: SessionData, given?: LabRows): Promise<MadeSession> {
+export async function makeSession(
+  data: SessionData,
+  given?: LabRows,
+  place: { studyId?: string; animalId?: string } = {},
+): Promise<MadeSession> {
   const lab = given ?? (await insertLab());
-  const { sessionId } = await insertSession(lab);
+  const { sessionId } = await insertSession(lab, place);
   const { labId, userId } = lab;
   const { parts, dataHash, countsHash } = await writeCanonical(data);
   for (const part of parts)

@@ -1,5 +1,5 @@
 import { rmSync } from 'node:fs';
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import { v7 } from 'uuid';
 import { db } from '@/db/connection';
 import { insertFile } from '@/db/repositories/files';
@@ -23,6 +23,9 @@ import { until } from '@/tests/integration/readouts/until';
 import { buildWorker, startWorker, type WorkerProcess } from '@/tests/integration/readouts/worker-process';
 import { insertLab } from '@/tests/support/rows';
 import { freshDatabase } from '@/tests/support/services';
+
+/** Seconds on a machine that has nothing else to do; the limit is for one that has. */
+vi.setConfig({ testTimeout: 240_000, hookTimeout: 240_000 });
 
 let dropDatabase: () => Promise<void>;
 let folder: string;
@@ -214,6 +217,38 @@ describe('a readout', () => {
     await expect(
       createReadout(ctxOf(other), { sessionId: made.sessionId, recipe: { label: 'fraction' } }),
     ).rejects.toMatchObject({ code: 'not-found' });
+  });
+
+  it('takes the labels of the study’s other sessions as its shuffles, as they were when it was made', async () => {
+    await expect(start({ label: 'fraction', null: { kind: 'sessions' } })).rejects.toMatchObject({
+      faults: [{ pointer: '/recipe/null/kind', code: 'no-other-sessions' }],
+    });
+    const { study_id: studyId, animal_id: animalId } = (await db()('recording_sessions')
+      .where({ id: made.sessionId })
+      .first()) as { study_id: string; animal_id: string };
+    for (const seed of [21, 22, 23])
+      await makeSession(makeData({ nTrials: 150 + seed, nUnits: 3, nBins: 2, seed }), made.lab, {
+        studyId,
+        animalId,
+      });
+    // Of another study: not used.
+    await makeSession(makeData({ nTrials: 40, nUnits: 3, nBins: 2, seed: 24 }), made.lab);
+    const readout = await start({ label: 'fraction', null: { kind: 'sessions' } });
+    expect(readout.recipe.null).toEqual({
+      kind: 'sessions',
+      draws: 3,
+      inputsSha256: expect.stringMatching(/^[0-9a-f]{64}$/),
+    });
+    const done = await atRest(readout.id);
+    expect(done.problems).toEqual([]);
+    expect(done.result!.null).toMatchObject({
+      kind: 'sessions',
+      draws: 3,
+      exceedances: 0,
+      p: 1 / 4,
+      smallestP: 1 / 4,
+    });
+    expect(done.result!.warnings.map(({ code }) => code)).toContain('few-sessions-for-null');
   });
 
   it('carries out every control and view by its name in the recipe', async () => {

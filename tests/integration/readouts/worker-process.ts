@@ -42,6 +42,7 @@ export function startWorker(folder: string, env: Record<string, string> = {}): W
       WORKER_RELAY_MS: '200',
       WORKER_DRAIN_MS: '200',
       WORKER_NICE: '0',
+      WORKER_SPLIT_SECONDS: '3600',
       ...env,
     },
   });
