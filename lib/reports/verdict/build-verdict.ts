@@ -4,7 +4,7 @@ import { formatInterval } from '@/lib/format/format-interval';
 import { formatNumber } from '@/lib/format/format-number';
 import { formatP } from '@/lib/format/format-p';
 import { decideVerdict, findExplanation } from './decide-verdict';
-import type { VerdictFacts, VerdictNull } from './verdict-facts';
+import type { VerdictControl, VerdictFacts, VerdictNull } from './verdict-facts';
 
 const nb = '\u00a0';
 
@@ -41,7 +41,7 @@ function controlClause(facts: VerdictFacts): { text: string; strong: string[] } 
   if (controls.length === 0) return { text: '', strong: [] };
   const failed = controls.find((control) => control.outcome === 'fails');
   if (failed) {
-    const strong = `does not survive ${failed.subject}`;
+    const strong = `does not survive ${listWords(failed.subjects)}`;
     return { text: `; it ${strong}`, strong: [strong] };
   }
   const unsure = controls.filter((control) => control.outcome === 'cannotTell').length;
@@ -50,6 +50,13 @@ function controlClause(facts: VerdictFacts): { text: string; strong: string[] } 
     text: unsure > 0 ? `, ${none}, though ${formatCount(unsure)} cannot tell` : `, ${none}`,
     strong: [],
   };
+}
+
+/** What the units still say once the explanation has been taken into account. */
+function whatIsLeft({ kind, r2, interval }: VerdictControl): string {
+  if (r2 === null) return 'the units add nothing that can be told';
+  const value = `${formatNumber(r2)}${interval ? `${nb}${formatInterval(interval)}` : ''}`;
+  return kind === 'incremental' ? `the units add ${value}` : `R²${nb}${value} is left once that is taken out`;
 }
 
 /**
@@ -81,16 +88,14 @@ export function buildVerdict(facts: VerdictFacts): Verdict {
     }
     case 'explained': {
       const explanation = findExplanation(facts.controls)!;
-      const strong = `${explanation.subject} explains it`;
+      const { subjects } = explanation;
+      const strong = `${listWords(subjects)} ${subjects.length === 1 ? 'explains' : 'explain'} it`;
       const alone = facts.controls.find((other) => other.kind === 'nuisanceOnly');
       const reach =
         alone?.r2 != null
-          ? `nuisance variables alone reach ${formatNumber(alone.r2)} ${formatInterval(alone.interval)} and `
+          ? `nuisance variables alone reach ${formatNumber(alone.r2)}${alone.interval ? `${nb}${formatInterval(alone.interval)}` : ''} and `
           : '';
-      const add =
-        explanation.r2 === null
-          ? 'the units add nothing that can be told'
-          : `the units add ${formatNumber(explanation.r2)}`;
+      const add = whatIsLeft(explanation);
       return {
         kind,
         sentence: `${whose(facts)} predict the ${label} ${when(facts.window)}, held-out R²${nb}${formatNumber(r2)}${nb}${formatInterval(interval)}, but ${strong}: ${reach}${add}.`,

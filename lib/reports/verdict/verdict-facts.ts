@@ -16,8 +16,8 @@ export interface VerdictNull {
 /** A control's outcome as a verdict needs it. */
 export interface VerdictControl {
   kind: string;
-  /** What the control is about, as a noun: "speed", "firing rate". */
-  subject: string;
+  /** What the control is about, as nouns: "speed", "firing rate". */
+  subjects: string[];
   outcome: 'survives' | 'fails' | 'cannotTell';
   r2: number | null;
   interval: Interval | null;

@@ -30,7 +30,7 @@ const facts: VerdictFacts = {
 const plain = (text: string): string => text.replaceAll('\u00a0', ' ');
 const control = (over: Partial<VerdictControl>): VerdictControl => ({
   kind: 'totalRate',
-  subject: 'total rate',
+  subjects: ['total rate'],
   outcome: 'survives',
   r2: 0,
   interval: null,
@@ -52,7 +52,7 @@ describe('buildVerdict', () => {
     ).toContain('and none of 2 controls explains it, though 1 cannot tell.');
     const failed = buildVerdict({
       ...facts,
-      controls: [control({ kind: 'generalise', subject: 'low contrast', outcome: 'fails' })],
+      controls: [control({ kind: 'generalise', subjects: ['low contrast'], outcome: 'fails' })],
     });
     expect(failed.kind).toBe('carries');
     expect(failed.strong).toContain('does not survive low contrast');
@@ -64,17 +64,29 @@ describe('buildVerdict', () => {
       controls: [
         control({
           kind: 'nuisanceOnly',
-          subject: 'speed',
+          subjects: ['speed'],
           outcome: 'fails',
           r2: 0.36,
           interval: { low: 0.29, high: 0.43, level: 0.95, method: '' },
         }),
-        control({ kind: 'incremental', subject: 'speed', outcome: 'fails', r2: 0.01 }),
+        control({ kind: 'incremental', subjects: ['speed'], outcome: 'fails', r2: 0.01 }),
       ],
     });
     expect(verdict.kind).toBe('explained');
     expect(plain(verdict.sentence)).toContain(
       'but speed explains it: nuisance variables alone reach 0.36 [0.29, 0.43] and the units add 0.01.',
+    );
+  });
+
+  it('names several nuisances in one list, and what an adjusted readout leaves', () => {
+    const verdict = buildVerdict({
+      ...facts,
+      controls: [
+        control({ kind: 'adjusted', subjects: ['speed', 'pupil', 'contrast'], outcome: 'fails', r2: 0.02 }),
+      ],
+    });
+    expect(plain(verdict.sentence)).toContain(
+      'but speed, pupil and contrast explain it: R² 0.02 is left once that is taken out.',
     );
   });
 

@@ -67,6 +67,7 @@ export default async function ReadoutPage({ params }: PageProps) {
           readout={readout}
           result={readout.result}
           session={session}
+          newestNumber={newestNumber}
           side={side}
           mayExclude={can(ctx.actor, 'exclusion.create')}
         />

@@ -35,12 +35,15 @@ export async function ReadoutSheet({
   readout,
   result,
   session,
+  newestNumber,
   side,
   mayExclude,
 }: {
   readout: Readout;
   result: ReadoutResult;
   session: Session;
+  /** Of the session's attempts. */
+  newestNumber: number;
   side: ReactNode;
   mayExclude: boolean;
 }) {
@@ -98,7 +101,7 @@ export async function ReadoutSheet({
     <TrialCursorProvider initialTrial={picture.trials[0]?.trial ?? null}>
       <Section side={side}>
         <h1 className="vh">{`Readout ${readout.number} of ${session.name}`}</h1>
-        <VerdictLine verdict={result.verdict} />
+        <VerdictLine verdict={result.verdict} place={{ number: readout.number, of: newestNumber }} />
         <FactsLine items={readoutFacts(result)} />
       </Section>
       <Section
