@@ -47,9 +47,9 @@ export function RunningHead({ trail }: { trail: readonly TrailStep[] }) {
             <ThemeToggle />
             {viewer ? (
               <>
-                <span>
+                <Link href="/account">
                   {viewer.userName}, {viewer.role}
-                </span>
+                </Link>
                 <SignOutButton />
                 <button
                   type="button"
@@ -66,7 +66,7 @@ export function RunningHead({ trail }: { trail: readonly TrailStep[] }) {
         </div>
       </header>
       {viewer ? (
-        <div className="menu-panel" id="menu-panel" hidden={!isMenuOpen}>
+        <nav className="menu-panel" id="menu-panel" aria-label="Menu" hidden={!isMenuOpen}>
           <ul>
             {steps.slice(0, -1).map((step, index) => (
               <li key={`${index} ${step.label}`}>
@@ -77,15 +77,15 @@ export function RunningHead({ trail }: { trail: readonly TrailStep[] }) {
               <ThemeToggle />
             </li>
             <li>
-              <span>
+              <Link href="/account">
                 {viewer.userName}, {viewer.role}
-              </span>
+              </Link>
             </li>
             <li>
               <SignOutButton />
             </li>
           </ul>
-        </div>
+        </nav>
       ) : null}
     </>
   );

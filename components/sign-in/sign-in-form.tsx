@@ -1,5 +1,6 @@
 'use client';
 
+import Link from 'next/link';
 import { useRef, useState } from 'react';
 import { useForm } from 'react-hook-form';
 import { Button } from '@/components/ui/button';
@@ -61,6 +62,9 @@ export function SignInForm({ next }: { next: string | null }) {
       </Field>
       <div className="acts">
         <Button type="submit">{isWaiting ? 'Signing in' : 'Sign in'}</Button>
+        <Link className="quiet" href="/forgotten-password">
+          Forgotten the password
+        </Link>
       </div>
       <p className="vh" role="status">
         {refusal ?? ''}
