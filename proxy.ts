@@ -1,10 +1,12 @@
 import { NextResponse, type NextRequest } from 'next/server';
+import { isDatabaseAway } from '@/lib/services/health/is-database-away';
 
 /**
  * Page headers only: a nonce for the content security policy, a request id, and the path for the sign-in page to
- * lead back to. Whether somebody may see a page is decided where the page reads its data, never here.
+ * lead back to. Whether somebody may see a page is decided where the page reads its data, never here. While the
+ * database is away every page is the one that says so, with status 503: a page that fails later could only say 500.
  */
-export function proxy(request: NextRequest): NextResponse {
+export async function proxy(request: NextRequest): Promise<NextResponse> {
   const nonce = Buffer.from(crypto.getRandomValues(new Uint8Array(16))).toString('base64');
   const requestId = crypto.randomUUID();
   const isDevelopment = process.env.NODE_ENV === 'development';
@@ -31,7 +33,10 @@ export function proxy(request: NextRequest): NextResponse {
   headers.set('x-nonce', nonce);
   headers.set('x-request-id', requestId);
   headers.set('x-outfold-path', request.nextUrl.pathname + request.nextUrl.search);
-  const response = NextResponse.next({ request: { headers } });
+  const response = (await isDatabaseAway())
+    ? NextResponse.rewrite(new URL('/away', request.url), { status: 503, request: { headers } })
+    : NextResponse.next({ request: { headers } });
+  if (response.status === 503) response.headers.set('retry-after', '5');
   response.headers.set('content-security-policy', policy);
   response.headers.set('x-request-id', requestId);
   response.headers.set('x-content-type-options', 'nosniff');

@@ -9,6 +9,7 @@ import { finishQueue, partQueue } from '@/lib/jobs/readout-flow';
 import { within } from '@/lib/jobs/within';
 import { announceWorker, withdrawWorker } from '@/lib/jobs/worker-presence';
 import { log } from '@/lib/log/log';
+import { forgetOldKeys } from '@/lib/services/upkeep/forget-old-keys';
 import { forgetSent } from '@/lib/services/outbox/forget-sent';
 import { sendWaitingMails } from '@/lib/services/mails/send-waiting-mails';
 import { reconcileWork } from '@/lib/services/outbox/reconcile-work';
@@ -56,6 +57,7 @@ const loops = [
     reconcileWork({ staleMs: settings.WORKER_STALE_MS, waitingMs: settings.WORKER_WAITING_MS }),
   ),
   repeat('forget what was sent long ago', 600_000, forgetSent),
+  repeat('forget old idempotency keys', 3_600_000, forgetOldKeys),
   repeat('send mails', 2_000, () => sendWaitingMails()),
   repeat('say that the worker is alive', 4_000, () => announceWorker(workerId)),
 ];

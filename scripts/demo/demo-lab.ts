@@ -1,5 +1,5 @@
 import type { Role } from '@/lib/contracts/lab';
-import type { RecipeInput } from '@/lib/contracts/recipe';
+import type { NuisanceColumn, RecipeInput } from '@/lib/contracts/recipe';
 import type { RecordingPlan } from './recording-plan';
 
 export interface DemoReadout {
@@ -50,8 +50,30 @@ export const otherLab = {
 
 const scene = { startMs: 80, endMs: 480 };
 const blocks = { kind: 'contiguous', k: 5, purgeTrials: 6 } as const;
+const before = { startMs: -200, endMs: 0 };
+const nuisances = [
+  { column: 'speed', term: 'spline' },
+  { column: 'contrast', term: 'category' },
+  { column: 'pupil', term: 'linear' },
+] as const satisfies NuisanceColumn[];
 const withinBlock = { kind: 'within', column: 'block', draws: 1000 } as const;
 
+/** The lab's usual recipe with the controls that a reviewer asks for first. */
+const usual = (seed: number, views: RecipeInput['views'] = []): Omit<RecipeInput, 'label'> => ({
+  window: scene,
+  transform: 'sqrt',
+  folds: blocks,
+  null: withinBlock,
+  controls: [
+    { kind: 'window', ...before },
+    { kind: 'nuisanceOnly', columns: [...nuisances] },
+    { kind: 'incremental', columns: [...nuisances] },
+    { kind: 'totalRate' },
+    { kind: 'trialOrder' },
+  ],
+  views,
+  seed,
+});
 export const demoSessions: DemoSession[] = [
   {
     animal: 'Sorrel',
@@ -102,11 +124,15 @@ export const demoSessions: DemoSession[] = [
       },
       {
         by: 'analyst',
-        recipe: { window: { startMs: -200, endMs: 0 }, folds: blocks, null: withinBlock, seed: 4 },
+        recipe: { window: before, folds: blocks, null: withinBlock, seed: 4 },
       },
       {
         by: 'analyst',
-        recipe: { window: scene, transform: 'sqrt', folds: blocks, null: withinBlock, seed: 20260514 },
+        recipe: usual(20260514, [
+          { kind: 'timeCourse', widthMs: 100, stepMs: 40 },
+          { kind: 'populationSize', sizes: [1, 2, 4, 8, 16, 32, 64, 128], draws: 20 },
+          { kind: 'weights' },
+        ]),
       },
     ],
   },
@@ -127,12 +153,7 @@ export const demoSessions: DemoSession[] = [
       driftSd: 0.35,
     },
     exclusions: [],
-    readouts: [
-      {
-        by: 'analyst',
-        recipe: { window: scene, transform: 'sqrt', folds: blocks, null: withinBlock, seed: 20260519 },
-      },
-    ],
+    readouts: [{ by: 'analyst', recipe: usual(20260519) }],
   },
   {
     animal: 'Teasel',
@@ -148,12 +169,7 @@ export const demoSessions: DemoSession[] = [
       driftSd: 0.35,
     },
     exclusions: [],
-    readouts: [
-      {
-        by: 'analyst',
-        recipe: { window: scene, transform: 'sqrt', folds: blocks, null: withinBlock, seed: 20260521 },
-      },
-    ],
+    readouts: [{ by: 'analyst', recipe: usual(20260521) }],
   },
   {
     animal: 'Yarrow',
@@ -169,12 +185,7 @@ export const demoSessions: DemoSession[] = [
       driftSd: 0.35,
     },
     exclusions: [],
-    readouts: [
-      {
-        by: 'analyst',
-        recipe: { window: scene, transform: 'sqrt', folds: blocks, null: withinBlock, seed: 20260603 },
-      },
-    ],
+    readouts: [{ by: 'analyst', recipe: usual(20260603) }],
   },
 ];
 

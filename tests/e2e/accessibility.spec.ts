@@ -32,9 +32,10 @@ for (const colorScheme of ['light', 'dark'] as const)
         baseURL: process.env.OUTFOLD_E2E_URL,
       });
       const page = await context.newPage();
-      await check(page, '/sign-in');
-      await signIn(page);
-      await check(page, '/');
+      for (const path of ['/sign-in', '/forgotten-password', '/away']) await check(page, path);
+      await signIn(page, 'lead@demo.outfold.test');
+      for (const path of ['/', '/account', '/members', '/audit']) await check(page, path);
+      await page.goto('/');
       const study = await firstLink(page, '/studies/');
       await check(page, study);
       const session = await firstLink(page, '/sessions/');

@@ -1,18 +1,21 @@
 import type { Recipe } from '@/lib/contracts/recipe';
+import { transformLabels } from '@/lib/engine/label/transform-labels';
 
 /**
- * A fixed function of the label, the same for every trial, so that nothing of a held-out trial enters it.
- * log: natural; NaN at or below 0. logit: ln(c / (1 − c)) of the value clipped to [ε, 1 − ε].
+ * The label under the recipe's fixed function, the same for every trial, so that nothing of a held-out trial enters it. A trial
+ * whose label the function is not defined for (missing, at or below 0 under log, outside [0, 1] under logit) becomes NaN, which
+ * drops it and counts it.
  */
 export function transformLabel(
   values: Float64Array,
   { kind, epsilon = 0.001 }: Recipe['labelTransform'],
 ): Float64Array {
-  if (kind === 'log') return values.map((value) => (value > 0 ? Math.log(value) : NaN));
-  if (kind === 'logit')
-    return values.map((value) => {
-      const clipped = Math.min(1 - epsilon, Math.max(epsilon, value));
-      return Math.log(clipped / (1 - clipped));
-    });
-  return values;
+  const isDefined = (value: number): boolean =>
+    Number.isFinite(value) && (kind === 'none' || (kind === 'log' ? value > 0 : value >= 0 && value <= 1));
+  const transformed = transformLabels(
+    values.filter(isDefined),
+    kind === 'logit' ? { kind, epsilon } : { kind },
+  );
+  let next = 0;
+  return values.map((value) => (isDefined(value) ? transformed[next++] : NaN));
 }
