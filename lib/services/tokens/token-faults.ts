@@ -2,11 +2,12 @@ import type { CreateToken, Role, Scope } from '@/lib/contracts/lab';
 import type { FieldFault } from '@/lib/errors/app-error';
 import { roleScopes } from '@/lib/policy/role-scopes';
 
-const longestMs = 366 * 24 * 60 * 60 * 1000;
+/** Rig computers run unattended for years; the page still proposes days. */
+const longestMs = 5 * 366 * 24 * 60 * 60 * 1000;
 
 /**
  * What is wrong with a wanted token: scopes beyond the maker's role, or beyond the token that asks; an end in the
- * past or more than a year away. Pure.
+ * past or more than five years away. Pure.
  */
 export function tokenFaults(
   maker: { role: Role; scopes: readonly Scope[] | null },
@@ -33,6 +34,6 @@ export function tokenFaults(
   if (expiresMs <= nowMs)
     faults.push({ pointer: '/expiresAt', code: 'out-of-range', detail: 'the end lies in the past' });
   else if (expiresMs > nowMs + longestMs)
-    faults.push({ pointer: '/expiresAt', code: 'out-of-range', detail: 'a token lives for a year at most' });
+    faults.push({ pointer: '/expiresAt', code: 'out-of-range', detail: 'a token lives for five years at most' });
   return faults;
 }
