@@ -7,7 +7,7 @@ import { runChunk } from '@/lib/engine/readout/run-chunk';
 import type { ChunkCache } from '@/lib/engine/readout/types';
 import type { InjectionCell } from '@/scripts/calibration/cells';
 import { nullSession, nullSize } from '@/scripts/calibration/null-session';
-import type { Add } from '@/scripts/calibration/run-chunk';
+import type { Add } from '@/scripts/calibration/tally';
 import { nullInput, runNullSession } from '@/scripts/calibration/run-null-session';
 
 /** Sessions that the control makes for its power at each size. */

@@ -8,7 +8,7 @@ import {
   nullSchemes,
 } from '@/scripts/calibration/cells';
 import type { Results } from '@/scripts/calibration/results';
-import type { Tally } from '@/scripts/calibration/run-chunk';
+import type { Tally } from '@/scripts/calibration/tally';
 
 const rate = (part: number, whole: number): string => (part / whole).toFixed(3).replace(/^0/, '');
 const plain = (value: number, digits = 3): string => value.toFixed(digits);

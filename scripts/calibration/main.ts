@@ -7,7 +7,8 @@ import { coverageModule } from '@/scripts/calibration/coverage-module';
 import { cells } from '@/scripts/calibration/cells';
 import { calibrationReport } from '@/scripts/calibration/calibration-report';
 import { addChunk, loadResults, saveResults } from '@/scripts/calibration/results';
-import { CHUNK_SEEDS, type Tally } from '@/scripts/calibration/run-chunk';
+import { CHUNK_SEEDS } from '@/scripts/calibration/run-chunk';
+import type { Tally } from '@/scripts/calibration/tally';
 
 // npm run test:calibration -- [--sessions 4000] [--minutes 600] [--workers 2] [--only "null trend"]
 // Runs what is missing, cell by cell in turn, keeps every finished chunk in docs/calibration.json, and writes

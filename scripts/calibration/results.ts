@@ -1,6 +1,6 @@
 import { existsSync, readFileSync, renameSync, writeFileSync } from 'node:fs';
 import { engineVersion } from '@/lib/engine/version';
-import type { Tally } from '@/scripts/calibration/run-chunk';
+import type { Tally } from '@/scripts/calibration/tally';
 
 /** What has been run so far: for each cell the chunks done and their sums. */
 export interface Results {

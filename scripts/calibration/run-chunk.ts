@@ -17,14 +17,10 @@ import { nullSession } from '@/scripts/calibration/null-session';
 import { runNullSession } from '@/scripts/calibration/run-null-session';
 import { runSignalSession } from '@/scripts/calibration/run-signal-session';
 import { ouMotion } from '@/scripts/calibration/ou-motion';
+import type { Add, Tally } from '@/scripts/calibration/tally';
 
 /** Seeds a chunk: the unit of work and of what is kept. */
 export const CHUNK_SEEDS = 50;
-
-/** Sums over a chunk's sessions; chunks add up in any order. */
-export type Tally = Record<string, number>;
-
-export type Add = (name: string, amount: number) => void;
 
 /** Runs seeds chunk·50 … chunk·50 + 49 of a cell. The same chunk always gives the same tally. */
 export function runCalibrationChunk(cell: Cell, chunk: number, linalg: Linalg): Tally {
