@@ -25,6 +25,9 @@ const packages = [
     without: 'readouts are computed in plain JavaScript, which is many times slower',
   },
   { name: 'chromium', needs: 'browser', isThere: () => process.env.CHROMIUM_PATH || findCommand('chromium') },
+  // The README's worked example, which is run as a test, is written with these two.
+  { name: 'curl', needs: 'browser', isThere: () => findCommand('curl') },
+  { name: 'jq', needs: 'browser', isThere: () => findCommand('jq') },
 ];
 
 /** The packages that are missing for the given needs ('database', 'queue', 'numerics', 'browser'). */
