@@ -18,7 +18,10 @@ const send = (message: FromChild): Promise<void> =>
   });
 
 // Without its worker nobody wants the result. SIGKILL, because exit() would wait for the threads' native calls.
-process.on('disconnect', () => process.kill(process.pid, 'SIGKILL'));
+const endAtOnce = (): void => void process.kill(process.pid, 'SIGKILL');
+process.on('disconnect', endAtOnce);
+// The worker may have been killed while this file was still being loaded: then the event has passed unheard.
+if (!process.connected) endAtOnce();
 for (const signal of ['SIGINT', 'SIGTERM'] as const) process.on(signal, () => undefined); // the worker decides
 try {
   os.setPriority(Number(process.env.OUTFOLD_COMPUTE_NICE) || 0); // the web server on the same machine stays quick
@@ -32,12 +35,12 @@ process.on('message', (message: ToChild) => {
       const { message: text, stack, code } = error as Error & { code?: unknown };
       await send({ kind: 'error', message: stack ?? text, code: typeof code === 'string' ? code : null });
     })
-    .finally(() => process.kill(process.pid, 'SIGKILL'));
+    .finally(endAtOnce);
 });
 pool.backend.then(
   () => send({ kind: 'ready' }),
   (error: unknown) => {
     log.fatal({ err: error }, 'a compute process could not start');
-    process.kill(process.pid, 'SIGKILL');
+    endAtOnce();
   },
 );

@@ -50,6 +50,8 @@ const host: ReaderHost = {
 };
 
 process.on('disconnect', () => process.exit(1));
+// The parent may have been killed while this file was still being loaded: then the event has passed unheard.
+if (!process.connected) process.exit(1);
 process.on('message', (message: ToReader) => {
   if (message.kind !== 'task') {
     const resolve = waiting.get(message.request);
