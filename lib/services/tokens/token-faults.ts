@@ -34,6 +34,10 @@ export function tokenFaults(
   if (expiresMs <= nowMs)
     faults.push({ pointer: '/expiresAt', code: 'out-of-range', detail: 'the end lies in the past' });
   else if (expiresMs > nowMs + longestMs)
-    faults.push({ pointer: '/expiresAt', code: 'out-of-range', detail: 'a token lives for five years at most' });
+    faults.push({
+      pointer: '/expiresAt',
+      code: 'out-of-range',
+      detail: 'a token lives for five years at most',
+    });
   return faults;
 }
