@@ -60,8 +60,7 @@ async function passes([name, program, args]) {
 if (process.argv[1] && realpathSync(process.argv[1]) === fileURLToPath(import.meta.url)) {
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'])
     process.on(signal, () => {
-      stopSteps();
-      process.exit(130);
+      void stopSteps().then(() => process.exit(130));
     });
   const { failed } = await check();
   process.exit(failed > 0 ? 1 : 0);

@@ -27,7 +27,7 @@ let ending;
 function end(code, line) {
   ending ??= (async () => {
     if (line) (code === 0 ? console.log : console.error)(line);
-    stopSteps();
+    await stopSteps();
     await services?.stop().catch((error) => console.error(error.message));
     built?.release();
     if (code === 0) say('Stopped.');

@@ -26,7 +26,7 @@ let built;
 let ending;
 function end(code) {
   ending ??= (async () => {
-    stopSteps();
+    await stopSteps();
     await services?.stop().catch((error) => console.error(error.message));
     built?.release();
     rmSync(reports, { recursive: true, force: true });

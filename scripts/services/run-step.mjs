@@ -20,6 +20,8 @@ export async function runStep({ what, command, args, root, env = {}, shows = fal
   child.stderr?.on('data', (bytes) => (output += bytes));
   const outcome = await new Promise((resolve) => {
     child.once('error', (error) => resolve(error.message));
+    // What it started itself and left behind goes with it; it may also hold the output open.
+    child.once('exit', () => signalGroup(child, 'SIGKILL'));
     child.once('close', (code, signal) =>
       resolve(code === 0 ? undefined : signal ? `stopped by ${signal}` : `code ${code}`),
     );
@@ -30,13 +32,24 @@ export async function runStep({ what, command, args, root, env = {}, shows = fal
   return output;
 }
 
-/** Ends every step that still runs: for Ctrl-C in the middle of one. */
-export function stopSteps(signal = 'SIGTERM') {
-  for (const child of running) {
-    try {
-      process.kill(-child.pid, signal);
-    } catch {
-      // It has just ended.
-    }
+/** Ends every step that still runs (for Ctrl-C in the middle of one): SIGTERM, and SIGKILL after five seconds. */
+export async function stopSteps() {
+  await Promise.all(
+    [...running].map(async (child) => {
+      if (child.exitCode !== null || child.signalCode !== null) return;
+      const over = new Promise((resolve) => child.once('exit', resolve));
+      signalGroup(child, 'SIGTERM');
+      const timer = setTimeout(() => signalGroup(child, 'SIGKILL'), 5_000);
+      await over;
+      clearTimeout(timer);
+    }),
+  );
+}
+
+function signalGroup(child, signal) {
+  try {
+    if (child.pid) process.kill(-child.pid, signal);
+  } catch {
+    // Nothing is left of it.
   }
 }
