@@ -1,5 +1,8 @@
 import { NextResponse, type NextRequest } from 'next/server';
+import { env } from '@/lib/env/env';
 import { isDatabaseAway } from '@/lib/services/health/is-database-away';
+
+const awayPath = '/away';
 
 /**
  * Page headers only: a nonce for the content security policy, a request id, and the path for the sign-in page to
@@ -33,10 +36,8 @@ export async function proxy(request: NextRequest): Promise<NextResponse> {
   headers.set('x-nonce', nonce);
   headers.set('x-request-id', requestId);
   headers.set('x-outfold-path', request.nextUrl.pathname + request.nextUrl.search);
-  const response = (await isDatabaseAway())
-    ? NextResponse.rewrite(new URL('/away', request.url), { status: 503, request: { headers } })
-    : NextResponse.next({ request: { headers } });
-  if (response.status === 503) response.headers.set('retry-after', '5');
+  if (request.nextUrl.pathname !== awayPath && (await isDatabaseAway())) return answerAway();
+  const response = NextResponse.next({ request: { headers } });
   response.headers.set('content-security-policy', policy);
   response.headers.set('x-request-id', requestId);
   response.headers.set('x-content-type-options', 'nosniff');
@@ -46,6 +47,19 @@ export async function proxy(request: NextRequest): Promise<NextResponse> {
   response.headers.set('cross-origin-opener-policy', 'same-origin');
   if (isSecure) response.headers.set('strict-transport-security', 'max-age=63072000; includeSubDomains');
   return response;
+}
+
+/** The page that says so, taken from this server itself: a rewrite cannot carry the status. */
+async function answerAway(): Promise<NextResponse> {
+  const { HOST, PORT } = env();
+  const host = HOST === '0.0.0.0' || HOST === '::' ? '127.0.0.1' : HOST.includes(':') ? `[${HOST}]` : HOST;
+  const page = await fetch(`http://${host}:${PORT}${awayPath}`, { cache: 'no-store' });
+  const headers = new Headers(page.headers);
+  for (const name of ['content-encoding', 'content-length', 'transfer-encoding', 'connection', 'keep-alive'])
+    headers.delete(name);
+  headers.set('retry-after', '5');
+  headers.set('cache-control', 'no-store');
+  return new NextResponse(await page.text(), { status: 503, headers });
 }
 
 // The API stays out: bodies over 10 MB would be cut silently here, and route() sets its own headers.
