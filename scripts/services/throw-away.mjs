@@ -39,7 +39,7 @@ export async function startThrowAway({ root, say = console.error, migrates = tru
     const env = {
       ...services.env,
       OUTFOLD_CONTROL: control.path,
-      LOG_LEVEL: process.env.LOG_LEVEL || 'warn',
+      LOG_LEVEL: process.env.LOG_LEVEL || 'error',
     };
     if (migrates) await runMigrations({ root, env });
     return { env, dataDir, children, secrets: services.secrets, stop };

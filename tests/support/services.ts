@@ -1,4 +1,5 @@
 import { randomBytes } from 'node:crypto';
+import { Redis } from 'ioredis';
 import knex, { type Knex } from 'knex';
 import { closeDb, db } from '@/db/connection';
 import { connectionOptions } from '@/db/connection-options';
@@ -16,7 +17,8 @@ export function requireServices(): void {
 }
 
 /**
- * A new, migrated database of its own for the calling test file; db() uses it from here on. Call the returned function
+ * A new, migrated database of its own for the calling test file, and an empty Redis (which all files share, one after
+ * the other); db() uses the database from here on. Call the returned function
  * in afterAll: it closes the pool and drops the database.
  */
 export async function freshDatabase(): Promise<() => Promise<void>> {
@@ -30,6 +32,9 @@ export async function freshDatabase(): Promise<() => Promise<void>> {
   });
   await admin.raw('create database ?? character set utf8mb4 collate utf8mb4_unicode_ci', [name]);
   await admin.destroy();
+  const queue = new Redis(process.env.REDIS_URL!);
+  await queue.flushall();
+  queue.disconnect();
 
   const url = new URL(original);
   url.pathname = `/${name}`;

@@ -94,12 +94,17 @@ describe('signing in', () => {
     const time = async (email: string, address: string) => {
       const visitor = browser(address);
       const startedAt = performance.now();
-      for (let n = 0; n < 4; n++) await visitor.signIn(email, 'not the password');
+      await visitor.signIn(email, 'not the password');
       return performance.now() - startedAt;
     };
-    await time(lead.email, '10.0.1.1');
-    const known = await time(lead.email, '10.0.1.2');
-    const unknown = await time('nobody-else@lab.test', '10.0.1.3');
+    // In turn, and the quickest of each: what else the machine does then weighs on both alike.
+    const knownTimes: number[] = [];
+    const unknownTimes: number[] = [];
+    for (let n = 0; n < 5; n++) {
+      knownTimes.push(await time(lead.email, `10.0.1.${n}`));
+      unknownTimes.push(await time('nobody-else@lab.test', `10.0.2.${n}`));
+    }
+    const [known, unknown] = [Math.min(...knownTimes), Math.min(...unknownTimes)];
     // Without the decoy hash an unknown account would answer in a small fraction of the time.
     expect(unknown).toBeGreaterThan(known * 0.4);
     expect(unknown).toBeLessThan(known * 2.5);
