@@ -3,6 +3,9 @@ import { expect, test } from '@playwright/test';
 import type { Page } from '@playwright/test';
 import { signIn } from './support/sign-in';
 
+/** Some thirty pages and widths, each read through by axe. */
+test.setTimeout(300_000);
+
 async function firstLink(page: Page, prefix: string): Promise<string> {
   const href = await page.locator(`main a[href^="${prefix}"]`).first().getAttribute('href');
   if (href === null) throw new Error(`no link to ${prefix} on ${page.url()}`);
