@@ -5,6 +5,6 @@ import type { Interval } from '@/lib/contracts/readout';
 export function testTrialIntervalWords(interval: Interval): IntervalWords {
   return {
     name: 'Test-trial interval, readouts held fixed',
-    covers: `${Math.round(interval.level * 100)} % interval over held-out trials or runs of them (BCa, Efron), the fitted readouts as they are. In simulated sessions it held the fitted readouts’ R² in only 79 to 88 %: it leaves out what other training trials would have changed.`,
+    covers: `${Math.round(interval.level * 100)} % interval over held-out trials or runs of them (BCa, Efron), the fitted readouts as they are. It leaves out what other training trials would have changed, so it holds the readouts’ R² less often than it says.`,
   };
 }
